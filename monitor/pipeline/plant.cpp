@@ -1,0 +1,47 @@
+// SPDX-License-Identifier: GPL-3.0-or-later
+#include "monitor/pipeline/plant.hpp"
+
+#include <cmath>
+#include <utility>
+
+#include "model/analysis.hpp"
+
+namespace tw::monitor {
+namespace {
+
+std::optional<model::LiquorReport> analyseTarget(const io::Recipe& recipe) {
+  const auto input = io::liquorInput(recipe, io::targetValues(recipe));
+  if (!input) return std::nullopt;
+  auto report = model::analyse(recipe.system, *input);
+  if (!report) return std::nullopt;
+  return std::move(*report);
+}
+
+}  // namespace
+
+Plant::Plant(io::Shop shop, const std::map<std::string, io::Recipe>& recipes) : m_shop(std::move(shop)) {
+  for (const io::Line& line : m_shop.lines) {
+    for (const io::Tank& tank : line.tanks) {
+      auto setup = std::make_unique<TankSetup>();
+      setup->tank = tank;
+      setup->tank.lineId = line.id;
+      setup->lineTitle = line.title;
+      setup->recipe = io::recipeForTank(recipes.at(tank.recipeId), tank);
+      setup->needed = io::neededChannels(setup->recipe);
+      setup->atTarget = analyseTarget(setup->recipe);
+      m_byId[tank.id] = setup.get();
+      m_tanks.push_back(std::move(setup));
+    }
+  }
+}
+
+const TankSetup* Plant::tank(const std::string& id) const {
+  const auto at = m_byId.find(id);
+  return at == m_byId.end() ? nullptr : at->second;
+}
+
+double uncertainty(const io::Channel& channel, double x) {
+  return std::hypot(channel.sigmaRel * x, channel.sigmaAbs);
+}
+
+}  // namespace tw::monitor
