@@ -4,7 +4,8 @@
 //
 // Rows are only ever added. Each call is one transaction unless it runs inside Writer's group. A call
 // that returns a value has made it durable (or, inside a group, will have when the group commits).
-// Faults are of kind Machine: `store_failed` with SQLite's words and the statement's purpose.
+// Faults are of kind Machine: `store_failed` with SQLite's words and the statement's purpose; those of
+// kind Input (`reading_invalid`, `event_invalid` and the ones named below) are the caller's to mend.
 // One thread at a time per Store object.
 #pragma once
 
@@ -93,10 +94,12 @@ struct AlarmRow {
   bool historic = false;
 };
 
-/// A liquor whose readings are stored and whose result is not: work left by a crash.
+/// A liquor whose readings are stored and whose result is not: work to do, also after a crash.
 struct PendingLiquor {
   std::string tank;
   Instant sampledAt{};
+  /// Which marking this is; a later one gets another number. 0 = whichever stands.
+  std::int64_t mark = 0;
 };
 
 class Store {
@@ -111,15 +114,21 @@ class Store {
   /// a Duplicate. Same identity but another value, while one is accepted: a Conflict, kept as
   /// suspicious. Marks the liquor (tank, sample time) as pending in the same transaction when anything
   /// accepted was stored. Refused rows without a value never conflict and are identified by their text.
+  /// A value that was refused before and comes again judged better is stored and supersedes the refused
+  /// row. `reading_invalid`: no tank or channel, a value that is not finite or missing where one must be.
   virtual model::Result<std::vector<Added>> addReadings(const std::vector<NewReading>& readings) = 0;
-  /// A new row that supersedes `id`, which becomes `superseded`. Marks the liquor pending. Faults
+  /// A new row that supersedes `id`, which becomes `superseded`. An accepted correction also supersedes
+  /// every other accepted reading of its tank, channel and time: the person has decided. A correction in
+  /// state Refused strikes the reading out. Marks as pending the liquor, the one the old row belonged to
+  /// and every sample time whose current result used a row that is superseded now. Faults
   /// `reading_unknown`, `already_superseded`.
   virtual model::Result<std::int64_t> correctReading(std::int64_t id, const NewReading& corrected) = 0;
-  /// A suspicious reading becomes accepted (a row that supersedes it), by a person. Same faults.
+  /// A suspicious reading becomes accepted (a row that supersedes it), by a person; the rest as for a
+  /// correction. Same faults, and `not_suspicious`.
   virtual model::Result<std::int64_t> confirmReading(std::int64_t id, const std::string& person,
                                                      Instant at) = 0;
   virtual model::Result<std::optional<Reading>> reading(std::int64_t id) = 0;
-  /// All states, by sample time then id; `limit` 0 = all.
+  /// All states, by sample time then id; `limit` keeps the first ones from `since` on, 0 = all.
   virtual model::Result<std::vector<Reading>> readings(const std::string& tank, Instant since,
                                                        std::size_t limit = 0) = 0;
   /// Per channel the newest accepted reading with sample time <= at.
@@ -130,15 +139,19 @@ class Store {
   virtual model::Result<std::vector<Added>> addEvents(const std::vector<EventRow>& events) = 0;
   virtual model::Result<std::vector<EventRow>> events(const std::string& tank, Instant since) = 0;
 
+  /// Liquors to solve, by sample time; `limit` 0 = all.
   virtual model::Result<std::vector<PendingLiquor>> pendingLiquors(std::size_t limit) = 0;
-  /// Stores the result (unless `result` is empty: the liquor was incomplete) and takes the liquor off
-  /// the pending list, in one transaction. A later row for the same tank and sample time replaces the
-  /// earlier one for readers, which still finds it by id.
+  /// Stores the result and takes the liquor off the pending list, in one transaction. A later row for
+  /// the same tank and sample time replaces the earlier one for readers; both are kept. Without a result
+  /// (the liquor was incomplete) an earlier one is withdrawn from readers, and the liquor waits until
+  /// something it may lack arrives (addReadings, markLaterPending). Hand in the PendingLiquor that
+  /// pendingLiquors() gave: if it was marked again since, it stays on the list. Id of the result or 0.
   virtual model::Result<std::int64_t> settleLiquor(const PendingLiquor& liquor,
                                                    const std::optional<ResultRow>& result) = 0;
-  /// Marks every later sample time of the tank whose current result used a reading of `channel` that is
-  /// older than or equal to `from`... up to the next accepted reading of that channel: they must be
-  /// solved again. Returns how many were marked.
+  /// To be called for each (tank, channel, sample time) that has just been stored or corrected. Marks
+  /// every sample time of the tank from `from` up to the next accepted reading of the channel whose
+  /// current result used a reading of the channel other than the one in force at `from` (an older or a
+  /// superseded one), and wakes the incomplete liquors of that stretch. Returns how many were marked.
   virtual model::Result<std::size_t> markLaterPending(const std::string& tank, const std::string& channel,
                                                       Instant from) = 0;
   /// Current results by sample time; `json` filled only when asked for. `limit` keeps the newest.
