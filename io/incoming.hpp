@@ -22,11 +22,13 @@ struct Incoming {
   std::string text;                      ///< as entered
   std::string unit;                      ///< as entered; empty = the channel's
   std::map<std::string, double> inputs;  ///< burette inputs by id, worksheet units
+  std::map<std::string, std::string> inputUnits;  ///< by input id, only where a header gave one
   std::string inputsText;                ///< as entered: JSON object
   std::string op;                        ///< operator
   // Only from an exported file: what the store said of the row it came from.
   std::string source, state, id, supersedes, reason;
   std::optional<Instant> receivedAt;
+  std::optional<std::string> enteredUnit;  ///< the unit of `text`, where it is not the unit of `value`
 };
 
 struct IncomingEvent {
