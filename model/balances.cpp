@@ -105,6 +105,12 @@ double Balances::worstResidual(bool withI) const {
   return worst;
 }
 
+double Balances::worstLogResidual() const {
+  double worst = 0.0;
+  for (const double R : m_R) worst = std::max(worst, std::abs(R));
+  return worst;
+}
+
 std::size_t Balances::worstRow() const {
   const auto at = std::max_element(m_relative.begin(), m_relative.end());
   return at == m_relative.end() ? kNone : static_cast<std::size_t>(at - m_relative.begin());

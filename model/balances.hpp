@@ -58,6 +58,7 @@ class Balances {
   double branchSlope();
 
   [[nodiscard]] double worstResidual(bool withI) const;
+  [[nodiscard]] double worstLogResidual() const;  ///< largest |ln P - ln N|
   [[nodiscard]] std::size_t worstRow() const;
   [[nodiscard]] double relativeResidual(std::size_t row) const { return m_relative[row]; }
   /// What the balance ion would have to be, mol/L; negative where only the other sign closes it.
@@ -91,6 +92,7 @@ class Balances {
   Eigen::MatrixXd m_J;
   Eigen::VectorXd m_rhs, m_step;
   Eigen::PartialPivLU<Eigen::MatrixXd> m_lu;
+  double m_stepScale = 1.0;  ///< share of the full Newton step that m_step is
   int m_iterations = 0;
 };
 

@@ -88,7 +88,7 @@ void Equilibrium::setUp(bool byOther) {
 void Equilibrium::fillRow(std::size_t unknown, std::size_t component, bool closesCharge) {
   const ComponentRow& row = m_problem->rows[component];
   double* w = m_balances.weight.data() + unknown * m_active.size();
-  m_balances.value[unknown] = row.value;
+  m_balances.value[unknown] = row.kind == RowKind::Hydroxide ? -row.value : row.value;
   const double zBalance = m_layout.componentCharge[component];
   if (closesCharge) {
     m_balances.balanceRow = unknown;
@@ -103,9 +103,9 @@ void Equilibrium::fillRow(std::size_t unknown, std::size_t component, bool close
       w[a] = -(m_layout.charge[j] - zBalance * m_balances.balanceNu[a]) / zBalance;
       continue;
     }
-    if (row.kind == RowKind::Hydroxide) {
-      w[a] = j == m_layout.hydroxide ? 1.0 : 0.0;
-      for (const ComponentTerm& metal : row.perMetal) w[a] += metal.nu * m_layout.nuOf(j, metal.component);
+    if (row.kind == RowKind::Hydroxide) {  // minus signs: then it rises with ln a(H^+) like every balance
+      w[a] = j == m_layout.hydroxide ? -1.0 : 0.0;
+      for (const ComponentTerm& metal : row.perMetal) w[a] -= metal.nu * m_layout.nuOf(j, metal.component);
     } else if (row.kind == RowKind::Free) {
       w[a] = nu > 0.0 && m_layout.holdsMetal[j] == 0 ? nu : 0.0;
     } else {
@@ -123,7 +123,7 @@ void Equilibrium::coldStart() {
   for (std::size_t k = 0; k < m_unknown.size(); ++k) {
     const std::size_t i = m_unknown[k];
     const ComponentRow& row = m_problem->rows[i];
-    double amount = row.value;
+    double amount = std::abs(row.value);
     if (k == m_balances.balanceRow) amount = std::max(amount, 0.1);
     m_balances.x[k] = i == m_layout.proton ? kNeutralLnH : std::log(std::max(amount, 1e-250));
     const double z = m_layout.componentCharge[i];
@@ -134,7 +134,7 @@ void Equilibrium::coldStart() {
   for (int s = 0; s < kSweeps; ++s) {
     m_balances.sweep();
     m_balances.evaluate();
-    if (m_balances.worstResidual(false) < kClose) break;
+    if (m_balances.worstLogResidual() < kClose) break;
   }
 }
 

@@ -25,7 +25,8 @@ bool Balances::solveStep(bool withI) {
   m_lu.compute(m_J);
   m_step = m_lu.solve(m_rhs);
   if (!m_step.allFinite()) return false;
-  double scale = 1.0;
+  m_stepScale = 1.0;
+  double& scale = m_stepScale;
   for (std::size_t i = 0; i < m_unknowns; ++i) {
     scale = std::min(scale, kLargestStep / std::max(std::abs(m_step(static_cast<Eigen::Index>(i))), 1e-9));
   }
@@ -55,7 +56,7 @@ bool Balances::lineSearch(bool withI, double meritNow, double worstNow) {
   for (double lambda = 1.0; lambda >= kSmallestLambda; lambda *= 0.5) {
     moveTo(lambda, withI);
     const double trial = merit(withI);
-    if (std::isfinite(trial) && trial <= (1.0 - 2.0 * kSufficient * lambda) * meritNow) return true;
+    if (std::isfinite(trial) && trial <= (1.0 - 2.0 * kSufficient * lambda * m_stepScale) * meritNow) return true;
     // Within rounding of the solution the merit is noise: take the better point and stop there.
     if (worstNow <= kAccepted) break;
     if (worstResidual(withI) <= kAccepted) return true;
