@@ -30,7 +30,9 @@ struct Tank {
     std::string thresholdFrom;
   };
   std::map<std::string, WatchOverride> watch;  ///< by solid id
-  std::map<std::string, double> balance;       ///< drag_out_L_h, evaporation_L_h ...
+  /// drag_out_L_h, evaporation_L_h; per channel "copper.electrons", "copper.efficiency", "copper.anode_g_h".
+  std::map<std::string, double> balance;
+  std::string where;                           ///< FILE:LINE, for faults found later
 };
 
 struct Line {
@@ -55,7 +57,8 @@ struct SerialPort {
   double every_s = 60.0;  ///< 0 = every line
 };
 
-/// Kept as read for now; kinds are checked, secrets only as *_file.
+/// Kept as read for now; kinds are checked, secrets only as *_file. A list (argv, to) is joined by line
+/// breaks.
 struct Route {
   std::string id, kind, minPriority = "medium", after;
   std::map<std::string, std::string> settings;
@@ -65,6 +68,7 @@ struct Shop {
   std::filesystem::path file;
   std::string title, timeZone = "UTC", listen = "127.0.0.1:8484", signIn = "required";
   std::filesystem::path dataDir, constants;     ///< absolute
+  std::filesystem::path tlsCert, tlsKey;        ///< absolute; empty = plain HTTP on loopback
   std::vector<std::filesystem::path> recipeDirs;
   std::vector<Line> lines;
   std::vector<DropFolder> drops;

@@ -30,6 +30,13 @@ struct Unit {
 /// "g/L mg/L mol/L mmol/L oz/gal g/mol mol mmol mEq mV A A.h % degC degF K pH mL L US-gal kg g lb h min";
 /// empty = dimensionless. nullopt when unknown.
 std::optional<Unit> findUnit(const std::string& name);
+/// A value to base units (temperatures to degC) and back.
+[[nodiscard]] double toBase(const Unit& unit, double value);
+[[nodiscard]] double fromBase(const Unit& unit, double base);
+/// Every unit's name, blank between: for messages.
+[[nodiscard]] std::string unitNames();
+/// "g/L", "mol^2/L", "no unit": for messages.
+[[nodiscard]] std::string dimensionText(const Dimension& dimension);
 
 /// Converts between two units; mass and amount concentrations convert through `formulaMass` (g/mol, 0 =
 /// none). Fault `unit_unknown` or `unit_mismatch` with both units in the detail.
