@@ -6,6 +6,7 @@
 #include <algorithm>
 
 #include "io/recipe/row_checks.hpp"
+#include "io/recipe/shipped.hpp"
 #include "io/recipe/suggestion.hpp"
 #include "io/recipe/toml_reader.hpp"
 
@@ -295,9 +296,7 @@ model::Result<Library, Faults> loadConstants(const fs::path& directory) {
 model::Result<fs::path> constantsDirectory(const fs::path& recipe, const fs::path& given) {
   if (!given.empty()) return given;
   std::error_code code;
-  const std::vector<fs::path> places = {recipe.parent_path() / "constants",
-                                        fs::path(TW_BATHS_INSTALL_DIR) / "constants",
-                                        fs::path(TW_BATHS_SOURCE_DIR) / "constants"};
+  const std::vector<fs::path> places = {recipe.parent_path() / "constants", shippedBaths() / "constants"};
   for (const fs::path& place : places) {
     if (fs::is_directory(place, code)) return place;
   }
