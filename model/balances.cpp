@@ -28,6 +28,9 @@ void Balances::resize(std::size_t unknowns, std::size_t species) {
   for (auto* perSpecies : {&lnConstant, &charge, &setschenow, &m_c, &m_lnC, &m_lnGamma, &m_slope}) {
     perSpecies->assign(species, 0.0);
   }
+  m_gradient.assign(unknowns, 0.0);
+  m_gradientSize.assign(unknowns, 0.0);
+  nested.assign(unknowns, 0);
   balanceRow = kNone;
   const auto size = static_cast<Eigen::Index>(unknowns + 1);
   if (m_J.rows() != size) {

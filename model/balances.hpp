@@ -42,6 +42,8 @@ class Balances {
   double balanceCharge = 0.0;     ///< z of the ion that closes the charge
   std::vector<double> balanceNu;  ///< species: how many of that ion each holds
 
+  std::vector<char> nested;        ///< unknowns: this balance is not that of a stated total (Eq. 17)
+
   std::vector<double> x;       ///< unknown ln activities
   double I = 0.0;              ///< current ionic strength; solved for only with `withI`
   std::vector<double> offset;  ///< residuals aimed at; zero except while following a path
@@ -54,6 +56,8 @@ class Balances {
   void sweep();
   /// Follows a path of residuals down to zero at fixed I (Eq. 17); slower and surer than `iterate`.
   bool follow(int largestCount);
+  /// Convex minimisation of the stated totals at fixed I, the other balances bracketed around it (Eq. 17).
+  bool solveNested();
   /// d ln(I of the species)/d ln I - 1 with all balances kept (Eq. 18); negative on the first branch.
   double branchSlope();
 
@@ -80,12 +84,16 @@ class Balances {
   [[nodiscard]] bool solveStep(bool withI);
   [[nodiscard]] bool lineSearch(bool withI, double meritNow, double worstNow);
   [[nodiscard]] bool correct();
+  void gradient();
+  void convexStep();
+  [[nodiscard]] bool minimise();
+  [[nodiscard]] bool settle(std::size_t row);
   void saveTrialBase(bool withI);
   void moveTo(double lambda, bool withI);
 
   std::size_t m_unknowns = 0, m_species = 0;
   std::vector<double> m_c, m_lnC, m_lnGamma, m_slope;
-  std::vector<double> m_P, m_N, m_R, m_relative, m_baseX, m_pathX, m_start;
+  std::vector<double> m_P, m_N, m_R, m_relative, m_baseX, m_pathX, m_start, m_gradient, m_gradientSize;
   double m_baseLnI = 0.0, m_residualI = 0.0, m_relativeI = 0.0, m_speciesI = 0.0;
   double m_needed = 0.0, m_allCharge = 0.0;
   bool m_noBalanceIon = false, m_balanceIsNoise = false;

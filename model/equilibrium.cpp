@@ -89,6 +89,7 @@ void Equilibrium::fillRow(std::size_t unknown, std::size_t component, bool close
   const ComponentRow& row = m_problem->rows[component];
   double* w = m_balances.weight.data() + unknown * m_active.size();
   m_balances.value[unknown] = row.kind == RowKind::Hydroxide ? -row.value : row.value;
+  m_balances.nested[unknown] = closesCharge || row.kind != RowKind::Total;
   const double zBalance = m_layout.componentCharge[component];
   if (closesCharge) {
     m_balances.balanceRow = unknown;

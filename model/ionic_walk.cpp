@@ -24,7 +24,10 @@ bool Equilibrium::solveFixedHere(double I) {
   if (m_balances.iterate(false, kFixedCount)) return true;
   coldStart();
   m_balances.I = I;
-  return m_balances.follow(kPathCount);
+  if (m_balances.follow(kPathCount)) return true;
+  coldStart();
+  m_balances.I = I;
+  return m_balances.solveNested();
 }
 
 /// At fixed I with whichever ion closes the charge there; keeps x in m_lnA.

@@ -14,6 +14,8 @@ constexpr double kLargestStepLnI = 1.5;  // the model bends quickly in I
 constexpr double kSufficient = 1e-4;     // Armijo's share; Nocedal & Wright, Numerical Optimization, ch. 3
 constexpr double kSmallestLambda = 1e-8;
 constexpr double kWildI = 4.0 * kLargestIonicStrength;
+constexpr double kNoPivot = 1e-12;        // rows of the Jacobian are of order 1
+constexpr double kTrace = 1e-12;
 constexpr int kPolish = 50;
 }  // namespace
 
@@ -23,6 +25,12 @@ bool Balances::solveStep(bool withI) {
   for (std::size_t i = 0; i < m_unknowns; ++i) m_rhs(static_cast<Eigen::Index>(i)) = -m_R[i];
   m_rhs(size - 1) = withI ? -m_residualI : 0.0;
   m_lu.compute(m_J);
+  // Two balances held by one and the same species are equal within rounding; what tells them apart is the
+  // sign of a vanishing pivot. A trace on the diagonal, which is never negative, keeps it right.
+  if (m_lu.matrixLU().diagonal().cwiseAbs().minCoeff() < kNoPivot) {
+    m_J.diagonal().array() += kTrace;
+    m_lu.compute(m_J);
+  }
   m_step = m_lu.solve(m_rhs);
   if (!m_step.allFinite()) return false;
   m_stepScale = 1.0;
