@@ -16,6 +16,7 @@ using std::chrono::minutes;
 
 /// What readTimeFields adds to a year of two digits.
 constexpr int kCentury = 2000;
+constexpr int kMonths = 12;
 
 /// Offsets of civil time are whole minutes; older ones are cut.
 minutes wholeMinutes(std::chrono::seconds offset) {
@@ -38,7 +39,8 @@ model::Result<std::chrono::year_month_day> settleDate(const DateFields& date, co
     const DateOrder seen = orderShownBy(date);
     const bool dayFirst = order == "dmy" || (order != "mdy" && seen == DateOrder::DayFirst);
     const bool monthFirst = order == "mdy" || (order != "dmy" && seen == DateOrder::MonthFirst);
-    if (!dayFirst && !monthFirst && date.first != date.second) {
+    const bool bothPossible = date.first <= kMonths && date.second <= kMonths;
+    if (!dayFirst && !monthFirst && bothPossible && date.first != date.second) {
       return model::fail(timeFault("date_order_open", text,
                                    "day and month could be either way round: write YYYY-MM-DD or set "
                                    "date_order"));

@@ -37,7 +37,7 @@ class DropWatcher {
 
  private:
   struct Impl;
-  std::unique_ptr<Impl> m_impl;
+  std::shared_ptr<Impl> m_impl;  ///< handlers under way keep it
 };
 
 }  // namespace tw::io
