@@ -67,6 +67,15 @@ void addLoad(CLI::App& app, LoadOptions& options, const io::Clock& clock, Action
   command->callback([&] { action = [&](Streams& streams) { return load(options, clock, streams); }; });
 }
 
+void addAdopt(CLI::App& app, AdoptOptions& options, const io::Clock& clock, Action& action) {
+  CLI::App* command = app.add_subcommand("adopt", "Take a changed recipe file into use for a tank");
+  addConfig(*command, options.config);
+  command->add_option("--tank", options.tank, "tank id")->required();
+  command->add_option("--by", options.person, "who takes it into use");
+  command->add_option("--reason", options.reason, "why");
+  command->callback([&] { action = [&](Streams& streams) { return adopt(options, clock, streams); }; });
+}
+
 void addExport(CLI::App& app, ExportOptions& options, bool& csv, Action& action) {
   CLI::App* command = app.add_subcommand("export", "Write a tank's readings (and with --json its results)");
   addConfig(*command, options.config);
@@ -99,6 +108,7 @@ int run(const std::vector<std::string>& arguments, const io::Clock& clock, Strea
   CheckOptions checkOptions;
   std::filesystem::path config;
   LoadOptions loadOptions;
+  AdoptOptions adoptOptions;
   ExportOptions exportOptions;
   DemoOptions demoOptions;
   bool sweepCsv = false;
@@ -108,6 +118,7 @@ int run(const std::vector<std::string>& arguments, const io::Clock& clock, Strea
   addCheck(app, checkOptions, action);
   addServe(app, config, clock, action);
   addLoad(app, loadOptions, clock, action);
+  addAdopt(app, adoptOptions, clock, action);
   addExport(app, exportOptions, exportCsv, action);
   addDemo(app, demoOptions, clock, action);
   try {

@@ -53,6 +53,13 @@ struct LoadOptions {
 };
 int load(const LoadOptions& options, const io::Clock& clock, Streams& streams);
 
+struct AdoptOptions {
+  std::filesystem::path config;
+  std::string tank, person, reason;
+};
+/// Takes a changed recipe file into use for one tank.
+int adopt(const AdoptOptions& options, const io::Clock& clock, Streams& streams);
+
 struct ExportOptions {
   std::filesystem::path config;
   std::string tank, since;
