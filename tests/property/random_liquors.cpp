@@ -607,6 +607,22 @@ std::string RandomLiquor::describe() const {
 
 RandomLiquor randomLiquor(std::uint64_t seed) { return Maker(seed).make(); }
 
+RandomLiquor withOtherAsComponent(RandomLiquor liquor) {
+  Dice dice(liquor.seed + 77);
+  Component other;
+  for (const Component& component : liquor.system.components) {
+    if (component.setBy != SetBy::Balance || component.other.empty()) continue;
+    other.formula = component.other;
+    other.charge = component.otherCharge;
+  }
+  if (other.formula.empty()) return liquor;
+  other.setBy = dice.chance(0.5) ? SetBy::Total : SetBy::Fixed;
+  liquor.system.components.push_back(other);
+  liquor.input.value.push_back(dice.chance(0.3) ? 0.0 : dice.logUniform(1e-6, 0.3));
+  liquor.cells.push_back("other as component");
+  return liquor;
+}
+
 std::vector<std::uint64_t> regressionSeeds() {
   std::ifstream file(TW_SOURCE_DIR "/tests/property/regressions/seeds.txt");
   if (!file) throw std::runtime_error("tests/property/regressions/seeds.txt is not there");

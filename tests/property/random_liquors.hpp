@@ -26,6 +26,10 @@ struct RandomLiquor {
 
 RandomLiquor randomLiquor(std::uint64_t seed);
 
+/// The same, where the liquor has a balance ion: its `other` made a component of its own with some total
+/// (or none), a case that randomLiquor leaves out.
+RandomLiquor withOtherAsComponent(RandomLiquor liquor);
+
 /// Seeds of tests/property/regressions/seeds.txt, in file order.
 std::vector<std::uint64_t> regressionSeeds();
 

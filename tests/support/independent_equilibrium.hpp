@@ -155,17 +155,20 @@ class Equilibrium {
   }
 
   /// Largest |S+ - S-| / (S+ + S-) of the balances at given ln activities and ionic strength, and the
-  /// relative error of that ionic strength. A component that is absent has no balance.
+  /// relative error of that ionic strength. A component that is absent has no balance. `s.byOther` says
+  /// that the `other` ion closes; an inert one is whatever the charge needs.
   R worstResidual(const Conditions<R>& k, State<R>& s) {
     setGammas(s.I);
-    setUp(k, s.absent, false);
+    setUp(k, s.absent, s.byOther && k.balance.has_value());
     residuals(s.x, false);
     R worst = R(0);
     // r = ln(S+/S-), and tanh(r/2) = (S+ - S-) / (S+ + S-).
     using std::tanh;
     for (const R& r : m_r) worst = std::max(worst, magnitude(R(tanh(r / R(2)))));
     s.c = m_c;
-    if (k.balance && s.absent[*k.balance] && !k.other.empty()) {
+    bool inert = s.byOther && !k.other.empty();
+    for (const auto& component : m_chem.system->components) inert = inert && component.formula != k.other;
+    if (inert) {
       const R Q = charge(k, s);
       if (Q * R(k.otherCharge) < R(0)) s.other = -Q / R(k.otherCharge);
     }
@@ -262,8 +265,10 @@ class Equilibrium {
     }
     for (std::size_t i = 0; i < m_chem.n; ++i) {
       if (m_chem.system->components[i].formula != k.other) continue;
-      State<R> s = fixedSet(k, without, true, &bare);
-      return s;
+      without[i] = false;  // it may have had a total of 0 until here
+      using std::log;
+      if (absent[i]) bare.x[i] = log(magnitude(Q));
+      return fixedSet(k, without, true, &bare);
     }
     bare.other = -Q / R(k.otherCharge);
     bare.byOther = true;

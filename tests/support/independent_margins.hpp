@@ -33,6 +33,9 @@ struct Closed {
   Scan other = 0;            ///< inert `other` ion, mol/L
   int otherCharge = 0;
   std::string otherName;
+  /// Where `other` is a component of its own: which, and the total it has in any case.
+  std::optional<std::size_t> otherComponent;
+  Scan otherLeast = 0;
 };
 
 /// Height over the sludge line of every solid at one place of a path; nullopt where no liquor exists.
@@ -69,6 +72,10 @@ inline Conditions<Scan> heldPh(const Closed& closed, const std::vector<Scan>& to
     k.balance = i;
     k.other = closed.otherName;
     k.otherCharge = closed.otherCharge;
+  }
+  if (closed.otherComponent && k.balance) {
+    k.value[*closed.otherComponent] = closed.otherLeast;
+    k.mode[*closed.otherComponent] = closed.otherLeast > Scan(0) ? Mode::Total : Mode::Absent;
   }
   return k;
 }

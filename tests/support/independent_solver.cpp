@@ -157,6 +157,11 @@ Reference solveIndependently(const ChemicalSystem& system, const model::LiquorIn
   closed.other = static_cast<Scan>(Quad(out.other_mol_L));
   closed.otherCharge = given.otherCharge;
   closed.otherName = given.other;
+  for (std::size_t i = 0; i < system.components.size(); ++i) {
+    if (given.other.empty() || system.components[i].formula != given.other) continue;
+    closed.otherComponent = i;
+    closed.otherLeast = input.value[i];
+  }
   findMargins(closed, out);
   return out;
 }
@@ -177,11 +182,17 @@ double independentResidual(const ChemicalSystem& system, const model::LiquorInpu
       s.x[i] = Scan(*amount.lgActivity) * ln10<Scan>();
       s.absent[i] = false;
     }
+  }
+  s.byOther = k.balance && s.absent[*k.balance];
+  if (cooled) k.balance.reset();  // every total is known by then, the charge with them
+  for (std::size_t i = 0; i < chem.n; ++i) {
     if (cooled) {
       // Closed at the sample's temperature: only the totals that were found there still hold.
       k.mode[i] = s.absent[i] ? Mode::Absent : Mode::Total;
       k.value[i] = report.totals_mol_L[i].second;
     }
+    const bool closes = !cooled && k.balance && s.absent[*k.balance] && system.components[i].formula == k.other;
+    if (closes) continue;
     if (k.mode[i] == Mode::Absent && !s.absent[i]) return 1.0;
     if (k.mode[i] != Mode::Absent && k.mode[i] != Mode::Charge && s.absent[i]) return 1.0;
   }
