@@ -199,7 +199,7 @@ void printCells(const Seen& seen) {
 TEST(Independent, EquilibriumAgreesOnRandomLiquors) {
   Seen seen;
   Worst worst;
-  const int count = longer(1500, 20000);
+  const int count = longer(800, 20000);
   std::vector<std::uint64_t> seeds = regressionSeeds();
   for (int i = 0; i < count; ++i) seeds.push_back(static_cast<std::uint64_t>(1000000 + i));
   for (const std::uint64_t seed : seeds) {

@@ -156,7 +156,7 @@ class Equilibrium {
 
   /// Largest |S+ - S-| / (S+ + S-) of the balances at given ln activities and ionic strength, and the
   /// relative error of that ionic strength. A component that is absent has no balance. `s.byOther` says
-  /// that the `other` ion closes; an inert one is whatever the charge needs.
+  /// that the `other` ion closes, `s.other` how much of an inert one there is.
   R worstResidual(const Conditions<R>& k, State<R>& s) {
     setGammas(s.I);
     setUp(k, s.absent, s.byOther && k.balance.has_value());
@@ -166,11 +166,10 @@ class Equilibrium {
     using std::tanh;
     for (const R& r : m_r) worst = std::max(worst, magnitude(R(tanh(r / R(2)))));
     s.c = m_c;
-    bool inert = s.byOther && !k.other.empty();
-    for (const auto& component : m_chem.system->components) inert = inert && component.formula != k.other;
-    if (inert) {
-      const R Q = charge(k, s);
-      if (Q * R(k.otherCharge) < R(0)) s.other = -Q / R(k.otherCharge);
+    if (k.balance && s.absent[*k.balance] && s.other > R(0)) {
+      R size = s.other * magnitude(R(k.otherCharge));
+      for (std::size_t j = 0; j < s.c.size(); ++j) size += s.c[j] * magnitude(R(m_chem.species[j].z));
+      worst = std::max(worst, magnitude(R((charge(k, s) + s.other * R(k.otherCharge)) / size)));
     }
     if (m_chem.system->activityModel == ActivityModel::Conditional) return worst;
     return std::max(worst, magnitude(R(ionicStrength(k, s) / s.I - R(1))));

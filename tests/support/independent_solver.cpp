@@ -184,6 +184,11 @@ double independentResidual(const ChemicalSystem& system, const model::LiquorInpu
     }
   }
   s.byOther = k.balance && s.absent[*k.balance];
+  bool inert = s.byOther;
+  for (const auto& component : system.components) inert = inert && component.formula != k.other;
+  for (const auto& amount : report.species) {
+    if (inert && amount.formula == k.other) s.other = amount.mol_L;
+  }
   if (cooled) k.balance.reset();  // every total is known by then, the charge with them
   for (std::size_t i = 0; i < chem.n; ++i) {
     if (cooled) {
