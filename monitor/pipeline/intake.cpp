@@ -55,7 +55,8 @@ NewReading frame(const Incoming& cell, const io::Channel& channel, const std::st
   row.sampledAt = cell.sampledAt;
   row.unit = channel.canonicalUnit;
   row.entered = cell.text;
-  row.enteredUnit = cell.unit.empty() && !cell.text.empty() ? channel.unit : cell.unit;
+  row.enteredUnit = cell.enteredUnit.value_or(cell.unit);
+  if (row.enteredUnit.empty() && cell.inputs.empty()) row.enteredUnit = channel.unit;
   row.inputs = cell.inputsText;
   row.op = cell.op;
   row.source = cell.source.empty() ? source : cell.source;
@@ -74,6 +75,21 @@ std::optional<std::string> implausible(const io::Channel& channel, double canoni
   if (x >= channel.plausibleLow && x <= channel.plausibleHigh) return std::nullopt;
   return fmt::format("{:.6g} {} is outside the plausible range {:g} to {:g} {}", x, channel.unit,
                      channel.plausibleLow, channel.plausibleHigh, channel.unit);
+}
+
+/// Burette inputs in the worksheet's units, where a header gave others.
+model::Result<std::map<std::string, double>> worksheetInputs(const io::Channel& channel, const Incoming& cell) {
+  std::map<std::string, double> inputs = cell.inputs;
+  if (!channel.worksheet) return inputs;
+  for (const io::WorksheetInput& input : channel.worksheet->inputs) {
+    const auto unit = cell.inputUnits.find(input.id);
+    const auto value = inputs.find(input.id);
+    if (unit == cell.inputUnits.end() || value == inputs.end()) continue;
+    const auto converted = io::convert(value->second, unit->second, input.unit);
+    if (!converted) return model::fail(converted.error());
+    value->second = *converted;
+  }
+  return inputs;
 }
 
 class Judge {
@@ -127,6 +143,12 @@ class Judge {
     const Incoming& cell = m_batch.readings[i];
     const io::Channel* channel = identify(cell);
     if (channel == nullptr) return;
+    const ReadingState stated = statedState(cell);
+    if (!cell.value && (stated == ReadingState::Refused || stated == ReadingState::Superseded)) {
+      m_rows[i] = frame(cell, *channel, m_batch.source, m_now);
+      m_rows[i]->state = stated;
+      return;
+    }
     if (!cell.value || !std::isfinite(*cell.value)) {
       m_out.refusals.push_back(refuse(cell, "not_a_number", "a number was expected"));
       return;
@@ -144,7 +166,6 @@ class Judge {
     NewReading row = frame(cell, channel, m_batch.source, m_now);
     row.value = canonical;
     row.state = statedState(cell);
-    if (row.enteredUnit.empty() && row.inputs.empty()) row.enteredUnit = channel.unit;
     const auto why = implausible(channel, canonical);
     if (row.state == ReadingState::Accepted && why) {
       row.state = ReadingState::Refused;
@@ -187,7 +208,9 @@ class Judge {
     if (together != m_values.end()) {
       for (const auto& [id, value] : together->second) values[id] = value;
     }
-    const auto canonical = io::evaluateWorksheet(setup.recipe, channel, cell.inputs, values);
+    const auto inputs = worksheetInputs(channel, cell);
+    if (!inputs) return refuse(cell, inputs.error().code, inputs.error().detail);
+    const auto canonical = io::evaluateWorksheet(setup.recipe, channel, *inputs, values);
     if (!canonical) return refuse(cell, canonical.error().code, canonical.error().detail);
     if (!std::isfinite(*canonical)) return refuse(cell, "not_a_number", "the worksheet gives no number");
     take(i, channel, *canonical);
@@ -195,6 +218,10 @@ class Judge {
   }
 
   void keepOnce(NewReading row) {
+    if (!row.value) {
+      m_out.readings.push_back(std::move(row));
+      return;
+    }
     auto& sames = m_seen[{row.tank, row.sampledAt.at, row.channel}];
     for (const double value : sames) {
       if (sameValue(value, *row.value)) {
