@@ -3,7 +3,8 @@
 // values, and their JSON in api_json.hpp. Sentences are not made here: a reason is a code with numbers,
 // and the desk translates.
 //
-// JSON names are the field names below in snake_case. Times are RFC 3339 in UTC. An absent optional is
+// JSON names are the field names below in snake_case (`op` is "operator"; pM, mol_L, temperature_C keep
+// their capitals). `inputs` and `json` hold JSON text here and go as JSON values, null when empty. Times are RFC 3339 in UTC. An absent optional is
 // JSON null. Numbers of channels are in the channel's unit.
 #pragma once
 
