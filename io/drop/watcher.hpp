@@ -14,9 +14,12 @@
 
 namespace tw::io {
 
-/// inotify with a rescan on overflow and at start. A file is complete when renamed into place, or
-/// unchanged for settle_ms. One file at a time is outstanding; the next is read when the one before has
-/// been filed. All callbacks on the loop's thread.
+/// inotify with a rescan at start, on overflow and every ten seconds (shares of other machines send no
+/// events). A file is complete when renamed into place, or closed by its writer and then unchanged for
+/// settle_ms; one that was found without an event only needs the latter. Complete files come in order of
+/// modification time, then name. One file at a time is outstanding; the next is read when the one before
+/// has been filed. Links, folders and other odd things are left alone, a file over 64 MiB is refused
+/// whole. All calls and callbacks on the loop's thread; destroy before the loop.
 class DropWatcher {
  public:
   /// `onFile` gets path and bytes and must lead to exactly one call of filed(); `onState(up, reason)`

@@ -25,7 +25,7 @@ std::vector<std::string> groupNames(const std::string& pattern) {
 
 struct Compiled {
   std::string pattern, fault;
-  boost::regex expression;
+  boost::regex expression = boost::regex();
   std::vector<std::string> names;
 };
 

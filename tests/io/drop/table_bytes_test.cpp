@@ -6,13 +6,14 @@
 #include <chrono>
 #include <cmath>
 #include <string>
+#include <vector>
 
 #include "io/drop/table.hpp"
 #include "io/drop/text_encoding.hpp"
 
 namespace {
 
-const std::string kGoodFiles[] = {
+const std::vector<std::string> kGoodFiles = {
     "sep=;\r\ntime;tank;operator;copper [oz/gal];copper.V;ph\r\n2026-03-02 06:00;T;kb;2,95;\"12,3\";10,215\r\n",
     "time,tank,channel,value,unit,operator,source,state,id,supersedes,reason,received,entered,entered_unit,inputs\n"
     "2026-03-02T06:00:00Z,T,copper,22.1,g/L,kb,s,accepted,r1,,,2026-03-02T06:01:00Z,22.1,g/L,\"{\"\"V\"\":1}\"\n",
