@@ -154,7 +154,7 @@ class Equilibrium {
     return low;
   }
 
-  /// Largest |S+ - S-| / (S+ + S-) of the balances at given ln activities and ionic strength, and the
+  /// Largest |sum nu c - T| / sum |nu| c of the balances at given ln activities and ionic strength, and the
   /// relative error of that ionic strength. A component that is absent has no balance. `s.byOther` says
   /// that the `other` ion closes, `s.other` how much of an inert one there is.
   R worstResidual(const Conditions<R>& k, State<R>& s) {
@@ -162,9 +162,19 @@ class Equilibrium {
     setUp(k, s.absent, s.byOther && k.balance.has_value());
     residuals(s.x, false);
     R worst = R(0);
-    // r = ln(S+/S-), and tanh(r/2) = (S+ - S-) / (S+ + S-).
-    using std::tanh;
-    for (const R& r : m_r) worst = std::max(worst, magnitude(R(tanh(r / R(2)))));
+    for (std::size_t e = 0; e < m_equations.size(); ++e) {
+      R sum = -m_equations[e].constant, size = R(0);
+      const std::size_t i = m_unknown[e];
+      const bool excess = k.mode[i] == Mode::Excess;  // n_k T_k is part of T_i: measured against T_i
+      for (const auto& [j, w] : m_equations[e].terms) {
+        sum += w * m_c[j];
+        size += excess ? R(0) : R(magnitude(w) * m_c[j]);
+      }
+      for (const std::size_t j : m_active) {
+        if (excess) size += magnitude(R(m_chem.species[j].nu[i])) * m_c[j];
+      }
+      worst = std::max(worst, magnitude(R(sum / size)));
+    }
     s.c = m_c;
     if (k.balance && s.absent[*k.balance] && s.other > R(0)) {
       R size = s.other * magnitude(R(k.otherCharge));
