@@ -3,7 +3,6 @@
 #include <gtest/gtest.h>
 #include <rapidcheck.h>
 
-#include <chrono>
 #include <cmath>
 #include <string>
 #include <vector>
@@ -85,23 +84,4 @@ TEST(ParseTableBytes, BoundsTheRefusalsItLists) {
   const auto batch = tw::io::parseTable(rows, "x.csv", zone);
   ASSERT_EQ(batch.refused.size(), 100'001U);
   EXPECT_EQ(batch.refused.back().code, "more_refused");
-}
-
-TEST(ParseTableBytes, ReadsHalfAMillionRows) {
-  static const tw::io::TimeZone zone = *tw::io::TimeZone::named("Europe/Paris");
-  std::string text = "time;tank;operator;copper;ammonia;ph;temperature\n";
-  for (int i = 0; i < 500'000; ++i) {
-    const int minute = i % 60, hour = i / 60 % 24, day = i / 1440 % 28 + 1, month = i / 40'320 % 12 + 1;
-    const auto two = [](int n) { return (n < 10 ? "0" : "") + std::to_string(n); };
-    text += "20" + two(i / 483'840 + 20) + '-' + two(month) + '-' + two(day) + "T" + two(hour) + ':' + two(minute) +
-            ":00Z;L2-T4;kb;22,1;85,0;10,21;41,5\n";
-  }
-  const auto begin = std::chrono::steady_clock::now();
-  const auto batch = tw::io::parseTable(text, "x.csv", zone);
-  const std::chrono::duration<double> took = std::chrono::steady_clock::now() - begin;
-  EXPECT_EQ(batch.readings.size(), 2'000'000U);
-  EXPECT_TRUE(batch.refused.empty());
-  RecordProperty("seconds", std::to_string(took.count()));
-  // A few seconds optimised; the bound leaves room for debug builds with sanitizers.
-  EXPECT_LT(took.count(), 60.0);
 }
