@@ -124,25 +124,29 @@ std::optional<NumberText> BatchBuilder::number(const ValueCell& cell, Decimal de
   return std::nullopt;
 }
 
-void BatchBuilder::push(Incoming reading) {
+void BatchBuilder::expect(std::size_t readings) {
+  m_batch.readings.reserve(std::min(readings, kMostReadings));
+}
+
+/// The next reading, begun with what its row says; nullptr when the file holds too many.
+Incoming* BatchBuilder::append() {
   if (m_batch.readings.size() >= kMostReadings) {
     ++m_moreReadings;
-    return;
+    return nullptr;
   }
-  m_batch.readings.push_back(std::move(reading));
+  return &m_batch.readings.emplace_back(m_row);
 }
 
 void BatchBuilder::addCell(const ValueCell& cell, Decimal decimal) {
   if (!cell.input.empty()) return addInput(cell, decimal);
   const auto parsed = number(cell, decimal);
-  if (!parsed) return;
-  Incoming reading = m_row;
-  reading.column = cell.column;
-  reading.channel = cell.channel;
-  reading.value = parsed->value;
-  reading.text = cell.text;
-  reading.unit = cell.unit;
-  push(std::move(reading));
+  Incoming* reading = parsed ? append() : nullptr;
+  if (reading == nullptr) return;
+  reading->column = cell.column;
+  reading->channel = cell.channel;
+  reading->value = parsed->value;
+  reading->text = cell.text;
+  reading->unit = cell.unit;
 }
 
 void BatchBuilder::addInput(const ValueCell& cell, Decimal decimal) {
@@ -202,7 +206,7 @@ void BatchBuilder::flushTitrations() {
       continue;
     }
     titration.reading.text = titration.reading.inputsText;
-    push(std::move(titration.reading));
+    if (Incoming* reading = append()) *reading = std::move(titration.reading);
   }
   m_titrations.clear();
 }
@@ -262,7 +266,8 @@ void BatchBuilder::addLong(const RowHead& head, const ValueCell& cell, const Lon
       return;
     }
   }
-  if (addExtras(reading, extras)) push(std::move(reading));
+  if (!addExtras(reading, extras)) return;
+  if (Incoming* slot = append()) *slot = std::move(reading);
 }
 
 void BatchBuilder::addEvent(const RowHead& head, const EventRow& row, Decimal decimal) {

@@ -45,6 +45,8 @@ class BatchBuilder {
  public:
   BatchBuilder(std::string source, const TimeZone& zone);
 
+  /// Makes room for this many readings, so that a long file is not moved about while it grows.
+  void expect(std::size_t readings);
   void setDateOrder(std::string order) { m_dateOrder = std::move(order); }
   /// Zone of the times that follow when a header named another than the shop's; nullptr = the shop's.
   void setZone(const TimeZone* zone);
@@ -76,7 +78,7 @@ class BatchBuilder {
   void addInput(const ValueCell& cell, Decimal decimal);
   void flushTitrations();
   bool addExtras(Incoming& reading, const LongExtras& extras);
-  void push(Incoming reading);
+  Incoming* append();
   const model::Result<StampedTime>& timeOf(std::string_view text);
 
   IncomingBatch m_batch;

@@ -53,8 +53,13 @@ class ObjectReader {
     const JsonMember* member = findMember(m_members, key);
     return member == nullptr ? std::string_view{} : trimmed(member->text);
   }
+  /// The text under either name; the service's own answers use the longer ones.
+  [[nodiscard]] std::string_view text(std::string_view key, std::string_view longer) const {
+    const std::string_view plain = text(key);
+    return plain.empty() ? text(longer) : plain;
+  }
   [[nodiscard]] RowHead head() const {
-    return {m_line, text("time"), text("tank"), text("operator"), text("source"), "time", "tank"};
+    return {m_line, text("time", "sampled_at"), text("tank"), text("operator"), text("source"), "time", "tank"};
   }
   [[nodiscard]] Decimal decimalOf(const JsonMember& member) const {
     return member.kind == Kind::Number ? kJsonDecimal : m_quoted;
@@ -67,7 +72,8 @@ class ObjectReader {
   void refuseUnknown(TableShape shape) {
     for (const JsonMember& member : m_members) {
       const ColumnName name = readColumnName(member.key);
-      if (member.kind != Kind::Null && fieldOf(name, shape) == Field::Unknown) {
+      const bool longer = name.name == "sampled_at" || name.name == "received_at";
+      if (member.kind != Kind::Null && !longer && fieldOf(name, shape) == Field::Unknown) {
         m_out.refuse(m_line, member.key, member.text, "column_unknown", "no field of this name");
       }
     }
@@ -144,7 +150,7 @@ class ObjectReader {
     extras.id = text("id");
     extras.supersedes = text("supersedes");
     extras.reason = text("reason");
-    extras.received = text("received");
+    extras.received = text("received", "received_at");
     extras.entered = text("entered");
     const JsonMember* enteredUnit = findMember(m_members, "entered_unit");
     if (enteredUnit != nullptr && enteredUnit->kind == Kind::Text) extras.enteredUnit = enteredUnit->text;
@@ -193,15 +199,42 @@ class LineReader {
 
 using OnObject = std::function<void(std::string_view object, int line)>;
 
-/// Objects one after the other, over any number of lines, with or without an array around them.
+constexpr std::string_view kBlanks = " \t\r\n";
+
+/// Position behind the opening brace of `{"readings": [...], "results": [...]}`; npos for anything else.
+std::size_t insideOfExport(std::string_view text) {
+  const auto skip = [&](std::size_t at, std::string_view word) {
+    at = text.find_first_not_of(kBlanks, at);
+    return at != std::string_view::npos && text.compare(at, word.size(), word) == 0 ? at + word.size()
+                                                                                    : std::string_view::npos;
+  };
+  const std::size_t inside = skip(0, "{");
+  for (const std::string_view key : {"\"readings\"", "\"results\""}) {
+    const std::size_t behindKey = inside == std::string_view::npos ? inside : skip(inside, key);
+    const std::size_t colon = behindKey == std::string_view::npos ? behindKey : skip(behindKey, ":");
+    if (colon != std::string_view::npos && skip(colon, "[") != std::string_view::npos) return inside;
+  }
+  return std::string_view::npos;
+}
+
+/// Objects one after the other, over any number of lines, with or without an array or an export's object
+/// around them.
 class ObjectScanner {
  public:
-  ObjectScanner(std::string_view text, BatchBuilder& out) : m_text(text), m_out(out) {}
+  ObjectScanner(std::string_view text, BatchBuilder& out) : m_text(text), m_out(out) {
+    const std::size_t inside = insideOfExport(text);
+    m_wrapped = inside != std::string_view::npos;
+    while (m_wrapped && m_at < inside) advance();
+  }
 
   void each(const OnObject& onObject) {
     while (m_at < m_text.size()) {
       const char c = m_text[m_at];
-      if (c == '{') {
+      if (m_wrapped && (c == ':' || c == '}')) {
+        advance();
+      } else if (m_wrapped && c == '"') {
+        skipKey();
+      } else if (c == '{') {
         const int line = m_line;
         const std::size_t begin = m_at;
         if (!skipObject()) {
@@ -222,6 +255,11 @@ class ObjectScanner {
     const char c = m_text[m_at];
     if (c == '\n' || (c == '\r' && m_text.compare(m_at, 2, "\r\n") != 0)) ++m_line;
     ++m_at;
+  }
+  void skipKey() {
+    do advance();
+    while (m_at < m_text.size() && m_text[m_at] != '"' && m_text[m_at] != '\n');
+    if (m_at < m_text.size()) advance();
   }
   bool skipObject() {
     std::size_t depth = 0;
@@ -252,9 +290,11 @@ class ObjectScanner {
   BatchBuilder& m_out;
   std::size_t m_at = 0;
   int m_line = 1;
+  bool m_wrapped = false;
 };
 
 bool spansLines(std::string_view text) {
+  if (insideOfExport(text) != std::string_view::npos) return true;
   LineReader lines(text);
   std::string_view line;
   int number = 0;

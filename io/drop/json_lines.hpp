@@ -11,7 +11,8 @@ namespace tw::io {
 /// True when the first character that counts opens an object or an array, or an early line does.
 [[nodiscard]] bool looksLikeJson(std::string_view text);
 
-/// One object a line, objects over several lines, or an array of them. Wide: `{"time", "tank",
+/// One object a line, objects over several lines, an array of them, or what `tankward export --json`
+/// writes (`{"readings": [...], "results": [...]}`; results are passed over). Wide: `{"time", "tank",
 /// "operator", "copper": 22.1, "ammonia": {"value", "unit"}, "nickel": {"V": 12.3}, "nickel.V": 12.3}`,
 /// the channels also inside `values`; long: with `channel` and `value`; events: with `event`. Numbers in
 /// quotes are read like table cells under `decimalHint`.

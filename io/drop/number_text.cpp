@@ -180,6 +180,7 @@ NumberText convert(const Parts& parts, const Reading& reading) {
 
 /// Words and signs that stand for "no value" in exports of instruments and spreadsheets.
 bool saysNoValue(std::string_view text) {
+  if (isDigit(text.front())) return false;
   std::string lower(text);
   std::transform(lower.begin(), lower.end(), lower.begin(),
                  [](char c) { return c >= 'A' && c <= 'Z' ? static_cast<char>(c + 32) : c; });

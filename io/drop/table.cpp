@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #include "io/drop/table.hpp"
 
+#include <algorithm>
 #include <optional>
 #include <utility>
 
@@ -72,6 +73,7 @@ bool isNumberField(Field field) {
 struct Evidence {
   DecimalEvidence decimal;
   std::size_t dayFirst = 0, monthFirst = 0;
+  std::size_t values = 0;  ///< cells that may become readings
 
   [[nodiscard]] std::string dateOrder(const std::string& hint) const {
     if (dayFirst > 0 && monthFirst == 0) return "dmy";
@@ -88,7 +90,10 @@ Evidence gather(std::string_view text, const Dialect& dialect) {
     if (walk.beforeHeader(row) || row.badQuote) continue;
     const auto& columns = walk.header().columns;
     for (std::size_t i = 0; i < row.cells.size() && i < columns.size(); ++i) {
-      if (isNumberField(columns[i].field)) evidence.decimal.add(row.cells[i]);
+      if (isNumberField(columns[i].field)) {
+        evidence.decimal.add(row.cells[i]);
+        evidence.values += row.cells[i].empty() ? 0 : 1;
+      }
       const bool otherDate = columns[i].field == Field::Time && row.cells[i].size() > 4 &&
                              row.cells[i][4] != '-';
       if (!otherDate) continue;
@@ -108,6 +113,7 @@ class TableReader {
       : m_walk(text, dialect), m_out(out) {
     const Evidence evidence = gather(text, dialect);
     m_decimal = evidence.decimal.decide(hints.decimal);
+    m_out.expect(evidence.values);
     m_out.setDateOrder(evidence.dateOrder(hints.dateOrder));
   }
 

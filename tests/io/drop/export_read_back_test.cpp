@@ -70,3 +70,24 @@ TEST(ExportReadBack, RefusesRowsThatNoExportWrites) {
   const char* codes[] = {"state_unknown", "time_unreadable", "value_missing", "inputs_unreadable", "channel_missing"};
   for (std::size_t i = 0; i < 5; ++i) EXPECT_EQ(batch.refused[i].code, codes[i]);
 }
+
+TEST(ExportReadBack, ReadsTheJsonFormAndPassesOverItsResults) {
+  const tw::io::TimeZone zone = *tw::io::TimeZone::named("Etc/UTC");
+  const std::string reading =
+      R"({"id":"r2","tank":"T","channel":"copper","time":"2026-03-02T06:00:00Z","received_at":"2026-03-02T06:01:00Z",)"
+      R"("value":22.097,"unit":"g/L","entered":"2,95","entered_unit":"oz/gal","state":"suspicious","supersedes":null,)"
+      R"("reason":"","operator":"kb","source":"bench","inputs":{"V":12.30}})";
+  for (const std::string gap : {"", "\n  "}) {
+    const std::string text = "{" + gap + "\"readings\":" + gap + "[" + gap + reading + gap + "]," + gap +
+                             R"("results":[{"recipe_sha256":"ab","tank":"T","species":[{"mol_L":1}]}]})" + gap;
+    const auto batch = tw::io::parseTable(text, "export.jsonl", zone);
+    EXPECT_TRUE(batch.refused.empty());
+    ASSERT_EQ(batch.readings.size(), 1U);
+    EXPECT_EQ(batch.readings[0].text, "2,95");
+    EXPECT_EQ(batch.readings[0].enteredUnit, "oz/gal");
+    EXPECT_EQ(batch.readings[0].state, "suspicious");
+    EXPECT_EQ(batch.readings[0].inputsText, "{\"V\":12.30}");
+    ASSERT_TRUE(batch.readings[0].receivedAt);
+    EXPECT_EQ(toRfc3339(*batch.readings[0].receivedAt), "2026-03-02T06:01:00Z");
+  }
+}

@@ -18,6 +18,7 @@ const std::vector<std::string> kGoodFiles = {
     "2026-03-02T06:00:00Z,T,copper,22.1,g/L,kb,s,accepted,r1,,,2026-03-02T06:01:00Z,22.1,g/L,\"{\"\"V\"\":1}\"\n",
     "time|tank|event|stock|amount|unit|note\n2026-03-02 06:00|T|addition|a|1.5|L|\"x\"\n",
     "{\"time\":\"2026-03-02 06:00\",\"tank\":\"T\",\"copper\":{\"value\":1,\"unit\":\"g/L\"},\"nickel\":{\"V\":1}}\n",
+    "{\"readings\":[{\"time\":\"2026-03-02 06:00\",\"tank\":\"T\",\"channel\":\"ph\",\"value\":1}],\"results\":[]}",
     "[{\"time\":\"2026-03-02 06:00\",\"tank\":\"T\",\"channel\":\"ph\",\"value\":1}]\n",
 };
 
