@@ -174,6 +174,14 @@ bool Equilibrium::jointFrom(bool warm, const Estimate& estimate) {
   return m_balances.iterate(m_withI, kLargestCount);
 }
 
+/// The joint iteration, and where it stalls once more from the solution at the I it would start with.
+bool Equilibrium::jointSolved(bool warm, const Estimate& estimate) {
+  constexpr int kLargestCount = 40;
+  if (jointFrom(warm, estimate)) return true;
+  coldStart();
+  return solveFixedHere(m_balances.I) && m_balances.iterate(true, kLargestCount);
+}
+
 SolveStatus Equilibrium::solveSide(bool warm, bool mayTurn, const Estimate& estimate) {
   // So large a move of I between neighbours of a path may have jumped to another branch.
   constexpr double kJump = 0.25;
@@ -181,7 +189,7 @@ SolveStatus Equilibrium::solveSide(bool warm, bool mayTurn, const Estimate& esti
     if (jointFrom(warm, estimate) || solveFixedHere(0.0)) return SolveStatus::Solved;
     return SolveStatus::NoSolution;
   }
-  if (jointFrom(warm, estimate) && m_balances.I <= kLargestIonicStrength) {
+  if (jointSolved(warm, estimate) && m_balances.I <= kLargestIonicStrength) {
     if (!sideFits() && mayTurn) return SolveStatus::Solved;  // the caller turns to the other ion
     const bool near = warm && std::abs(std::log(m_balances.I / std::max(estimate.I, 1e-12))) < kJump;
     if (firstBranch(!near)) return SolveStatus::Solved;

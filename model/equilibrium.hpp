@@ -81,6 +81,7 @@ class Equilibrium {
   void coldStart();
   [[nodiscard]] SolveStatus solveSide(bool warm, bool mayTurn, const Estimate& estimate);
   [[nodiscard]] bool jointFrom(bool warm, const Estimate& estimate);
+  [[nodiscard]] bool jointSolved(bool warm, const Estimate& estimate);
   [[nodiscard]] bool firstBranch(bool thorough);
   [[nodiscard]] bool solveFixed(double I);
   [[nodiscard]] bool solveFixedHere(double I);
