@@ -191,6 +191,10 @@ class HttpSession : public std::enable_shared_from_this<HttpSession> {
   }
 
   void close() { m_stream.close(); }
+  /// A request that is being answered gets its answer; the connection ends with it.
+  void closeUnlessAnswering() {
+    if (!m_answering) close();
+  }
 
  private:
   void onRead(const error_code& error) {
@@ -213,6 +217,7 @@ class HttpSession : public std::enable_shared_from_this<HttpSession> {
     m_head = request.method() == http::verb::head;
     const Request plain = plainRequest(request);
     if (plain.path == kLivePath && websocket::is_upgrade(request)) return upgrade(request, plain);
+    m_answering = true;
     auto self = shared_from_this();
     auto answered = std::make_shared<bool>(false);
     m_server->hooks.answer(plain, [self, answered](const Response& response) {
@@ -237,8 +242,9 @@ class HttpSession : public std::enable_shared_from_this<HttpSession> {
     m_stream.expires_after(m_server->limits.requestTime);
     http::async_write(m_stream, *m_response,
                       [self = shared_from_this()](const error_code& error, std::size_t) {
+                        self->m_answering = false;
                         if (error) return self->close();
-                        if (self->m_keepAlive) return self->read();
+                        if (self->m_keepAlive && !self->m_server->stopping) return self->read();
                         error_code ignored;
                         self->m_stream.socket().shutdown(tcp::socket::shutdown_send, ignored);
                       });
@@ -250,7 +256,7 @@ class HttpSession : public std::enable_shared_from_this<HttpSession> {
   std::optional<http::request_parser<http::string_body>> m_parser;
   std::optional<HttpResponse> m_response;
   unsigned m_version = 11;
-  bool m_keepAlive = true, m_head = false;
+  bool m_keepAlive = true, m_head = false, m_answering = false;
 };
 
 struct HostPort {
@@ -359,7 +365,7 @@ void HttpServer::stop() {
   const std::set<LiveSession*> clients = m_impl->live;
   for (LiveSession* client : clients) client->close();
   const std::set<HttpSession*> sessions = m_impl->sessions;
-  for (HttpSession* session : sessions) session->close();
+  for (HttpSession* session : sessions) session->closeUnlessAnswering();
 }
 
 }  // namespace tw::monitor

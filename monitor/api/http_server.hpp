@@ -46,7 +46,7 @@ class HttpServer {
   void push(std::string text);
   [[nodiscard]] std::size_t liveClients() const;
   [[nodiscard]] std::size_t connections() const;
-  /// Takes no more connections; those that are open end.
+  /// Takes no more connections; those that are open end, requests at hand after their answer.
   void stop();
 
   struct Impl;

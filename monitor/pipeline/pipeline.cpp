@@ -2,6 +2,7 @@
 #include "monitor/pipeline/pipeline.hpp"
 
 #include <algorithm>
+#include <exception>
 #include <map>
 #include <thread>
 #include <utility>
@@ -26,6 +27,15 @@ model::Result<std::map<std::string, io::Instant>> newestBefore(io::Store& store,
     newest[row.tank] = latest;
   }
   return newest;
+}
+
+/// A listener's bug must not keep a sender waiting for its answer.
+void tell(const std::function<void()>& call) {
+  try {
+    call();
+  } catch (const std::exception& e) {
+    io::log(io::LogLevel::Error, "listener_failed", {{"what", e.what()}});
+  }
 }
 
 io::Reading rowOf(const io::NewReading& added, std::int64_t id, io::ReadingState state) {
@@ -118,8 +128,10 @@ bool Pipeline::add(IntakeOutcome outcome, Then<BatchAnswer> then) {
         m_pool.wake();
         m_loop.post([this, batch, then, done = std::move(done)] {
           if (!done) return then(model::fail(done.error()));
-          if (!batch->readings.empty()) m_listener.onReadings(batch->readings);
-          if (!batch->events.empty()) m_listener.onEvents(batch->events);
+          tell([&] {
+            if (!batch->readings.empty()) m_listener.onReadings(batch->readings);
+            if (!batch->events.empty()) m_listener.onEvents(batch->events);
+          });
           then(std::move(batch->answer));
         });
       });
@@ -141,8 +153,10 @@ bool Pipeline::correct(std::int64_t id, io::NewReading corrected, Then<std::int6
         m_pool.wake();
         m_loop.post([this, newId, row, then, done = std::move(done)] {
           if (!done) return then(model::fail(done.error()));
-          m_listener.onReadings({rowOf(*row, *newId, row->state)});
-          m_listener.onChangedPast(row->tank);
+          tell([&] {
+            m_listener.onReadings({rowOf(*row, *newId, row->state)});
+            m_listener.onChangedPast(row->tank);
+          });
           then(*newId);
         });
       });
@@ -165,8 +179,10 @@ bool Pipeline::confirm(std::int64_t id, std::string person, Then<std::int64_t> t
         m_pool.wake();
         m_loop.post([this, row, then, done = std::move(done)] {
           if (!done) return then(model::fail(done.error()));
-          m_listener.onReadings({*row});
-          m_listener.onChangedPast(row->tank);
+          tell([&] {
+            m_listener.onReadings({*row});
+            m_listener.onChangedPast(row->tank);
+          });
           then(row->id);
         });
       });

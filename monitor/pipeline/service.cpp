@@ -63,6 +63,7 @@ std::string liveText(const io::wire::LiveMessage& message) {
 struct Service::Impl {
   Impl(io::Loop& l, const io::Clock& c, io::Shop shop, const std::map<std::string, io::Recipe>& recipes)
       : loop(l), clock(c), plant(std::move(shop), recipes) {}
+  ~Impl();
 
   model::Result<model::Done> start();
   model::Result<model::Done> openStores(std::unique_ptr<io::Store>& writable);
@@ -101,6 +102,19 @@ struct Service::Impl {
   /// Guards timers that outlive the service on a loop that goes on.
   std::shared_ptr<bool> alive = std::make_shared<bool>(true);
 };
+
+/// The writer's store closes last: only then can SQLite fold its log into the file.
+Service::Impl::~Impl() {
+  drops.clear();
+  serials.clear();
+  server.reset();
+  if (pipeline) pipeline->stop();
+  context.reset();
+  keeper.reset();
+  board.reset();
+  view.reset();
+  pipeline.reset();
+}
 
 model::Result<model::Done> Service::Impl::openStores(std::unique_ptr<io::Store>& writable) {
   const io::Shop& shop = plant.shop();

@@ -49,6 +49,7 @@ void SolverPool::stop() {
   m_wake.notify_all();
   for (std::thread& thread : m_threads) thread.join();
   m_threads.clear();
+  m_stores.clear();
 }
 
 void SolverPool::wake() {

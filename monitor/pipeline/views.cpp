@@ -3,6 +3,8 @@
 
 #include <utility>
 
+#include <nlohmann/json.hpp>
+
 #include "monitor/pipeline/report_json.hpp"
 
 namespace tw::monitor {
@@ -52,7 +54,8 @@ io::wire::ReadingView readingView(const TankSetup* setup, const io::Reading& rea
   view.state = io::name(reading.state);
   view.supersedes = reading.supersedes;
   view.reason = reading.reason;
-  view.inputs = reading.inputs;
+  // An imported text may be anything; only JSON may go into JSON.
+  if (nlohmann::json::accept(reading.inputs)) view.inputs = reading.inputs;
   return view;
 }
 
