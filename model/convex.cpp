@@ -102,7 +102,7 @@ bool Balances::minimise() {
 /// Brings the residual of one nested balance to zero by its own activity, the convex problem solved anew at
 /// every trial. True when it got there.
 bool Balances::settle(std::size_t row) {
-  constexpr int kWidenings = 60, kHalvings = 80;
+  constexpr int kWidenings = 100, kHalvings = 80;
   constexpr double kSettled = 1e-9;
   const auto residualAt = [&](double trial) {
     x[row] = trial;
@@ -112,10 +112,13 @@ bool Balances::settle(std::size_t row) {
   double fa = residualAt(a);
   if (std::isnan(fa) || std::abs(fa) <= kSettled) return !std::isnan(fa);
   double b = a, fb = fa;
-  for (int n = 0; n < kWidenings && fa * fb > 0.0; ++n) {
+  // Balances rise with their own activity, if not everywhere (a free ligand beside a proton total): the
+  // steps lengthen until the other sign is found.
+  double shortest = 0.2;
+  for (int n = 0; n < kWidenings && fa * fb > 0.0; ++n, shortest *= 1.1) {
     a = b;
     fa = fb;
-    b -= std::copysign(std::clamp(std::abs(fb), 0.1, 10.0), fb);  // balances rise with their own activity
+    b -= std::copysign(std::clamp(std::abs(fb), std::min(shortest, 20.0), 20.0), fb);
     fb = residualAt(b);
     if (std::isnan(fb)) return false;
   }
