@@ -54,7 +54,7 @@ class Balances {
   bool iterate(bool withI, int largestCount);
   /// One round of one-at-a-time corrections at fixed I, cheap and safe far from the solution.
   void sweep();
-  /// Follows a path of residuals down to zero at fixed I (Eq. 17); slower and surer than `iterate`.
+  /// Follows a path of residuals down to zero at fixed I (Eq. 20); slower and surer than `iterate`.
   bool follow(int largestCount);
   /// Convex minimisation of the stated totals at fixed I, the other balances bracketed around it (Eq. 17).
   bool solveNested();
