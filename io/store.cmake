@@ -1,5 +1,6 @@
 # SPDX-License-Identifier: GPL-3.0-or-later
 target_sources(tw_io PRIVATE
+  store/export.cpp
   store/open_store.cpp
   store/schema.cpp
   store/schema_v1.cpp

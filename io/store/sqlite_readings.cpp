@@ -77,7 +77,8 @@ Known known(Database& db, const NewReading& reading) {
     const bool accepted = row.text(3) == name(ReadingState::Accepted);
     const bool same = reading.value ? value && sameValue(*value, *reading.value)
                                     : !value && row.text(2) == reading.entered;
-    if (same && refused && reading.state != ReadingState::Refused) {
+    const bool better = reading.state == ReadingState::Accepted || reading.state == ReadingState::Suspicious;
+    if (same && refused && better) {
       if (current) found.sameRefused = id;
     } else if (same && (!found.same || (current && accepted))) {
       found.same = id;
