@@ -12,7 +12,7 @@ namespace tw::model {
 inline constexpr double kDaviesRange_mol_L = 0.7;      ///< above it the result carries a warning
 inline constexpr double kLargestIonicStrength = 20.0;  ///< mol/L; beyond it no liquor is feasible
 
-/// sqrt(I)/(1+sqrt(I)) - 0.3 I (Eq. 5). Davies, Ion Association (1962), p. 41.
+/// sqrt(I)/(1+sqrt(I)) - 0.3 I (Eq. 5). Davies, Ion Association (1962), pp. 37-53.
 [[nodiscard]] double daviesTerm(double I);
 /// Its derivative by I; I > 0.
 [[nodiscard]] double daviesTermSlope(double I);

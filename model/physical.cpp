@@ -29,7 +29,7 @@ double waterPermittivity(double t_C) {
 }
 
 double debyeHueckelA(double t_C) {
-  constexpr double kSlope = 1.824830e6;  // e^3 sqrt(2 N_A) / (ln10 8 pi (eps0 k)^1.5), SI, kg/L inside
+  constexpr double kSlope = 1.824830e6;  // SI; origin under Eq. 3
   const double epsilonT = waterPermittivity(t_C) * (t_C + kZeroCelsius_K);
   return kSlope * std::sqrt(waterDensity_kg_L(t_C)) / (epsilonT * std::sqrt(epsilonT));
 }
