@@ -141,7 +141,7 @@ void Service::Impl::compose(std::unique_ptr<io::Store> writable) {
   listener.onEvents = [this](const auto& stored) { board->onEvents(stored); };
   listener.onResult = [this](const io::ResultRow& row) {
     ++counters.results;
-    io::log(LogLevel::Info, "result_stored",
+    io::log(row.historic ? LogLevel::Debug : LogLevel::Info, "result_stored",
             {{"tank", row.tank},
              {"id", std::to_string(row.id)},
              {"sampled_at", io::toRfc3339(row.sampledAt)},
