@@ -80,7 +80,8 @@ const std::vector<KindRule>& kindRules() {
   using enum KindVerdict;
   static const std::vector<KindRule> rules = {
       {"acid", "cyanide", Refuse, "Acid sets hydrogen cyanide free from a cyanide bath."},
-      {"ammonium", "cyanide", Refuse, "Ammonium salts lower the pH of a cyanide bath and set hydrogen cyanide free."},
+      {"ammonium", "cyanide", Refuse,
+       "Ammonium salts lower the pH of a cyanide bath and set hydrogen cyanide free."},
       {"oxidiser", "cyanide", Refuse, "Oxidisers attack cyanide with heat and can give cyanogen chloride."},
       {"cyanide", "acid", Refuse, "Cyanide in an acid bath becomes hydrogen cyanide at once."},
       {"oxidiser", "ammonia", Refuse, "Strong oxidisers and ammonia form chloramines and worse."},
@@ -99,7 +100,8 @@ const std::vector<KindRule>& kindRules() {
       {"base", "hot", Caution, "Caustic into hot liquor boils up: cool first, small steps."},
       {"water", "caustic", Caution, "Water on strong hot caustic boils up: add slowly."},
       {"water", "hot", Caution, "Cold water into hot liquor splashes: add slowly."},
-      {"reducer", "hypophosphite", Caution, "A large dose can start a run-away: no more than a tenth at a time."},
+      {"reducer", "hypophosphite", Caution,
+       "A large dose can start a run-away: no more than a tenth at a time."},
   };
   return rules;
 }

@@ -33,8 +33,9 @@ void checkMedium(TableReader& row, const std::string& medium) {
     const auto anion = parseFormula(medium.substr(bar + 1));
     if (cation && anion && cation->charge == 1 && anion->charge == -1) return;
   }
-  row.fault("medium", "bad_medium",
-            fmt::format("medium is \"{}\"; expected cation|anion of a 1:1 salt, such as Na^+|ClO4^-", medium));
+  row.fault(
+      "medium", "bad_medium",
+      fmt::format("medium is \"{}\"; expected cation|anion of a 1:1 salt, such as Na^+|ClO4^-", medium));
 }
 
 model::Constant readConstant(TableReader& row) {
@@ -71,8 +72,7 @@ void checkReserved(TableReader& reader, const ReactionRow& row, bool ownRows) {
   }
   const std::map<std::string, double> expected = {{model::kWater, 1.0}, {model::kProton, -1.0}};
   if (row.coefficients != expected) {
-    reader.fault("from", "reserved_species",
-                 "OH^- must be made from = { \"H2O\" = 1, \"H^+\" = -1 }");
+    reader.fault("from", "reserved_species", "OH^- must be made from = { \"H2O\" = 1, \"H^+\" = -1 }");
   }
 }
 
@@ -248,10 +248,12 @@ void findDuplicates(const Library& library, Faults& faults) {
   const auto reactionKey = [](const ReactionRow& row) {
     return row.set == kDefaultSet ? row.name : row.name + " of set " + row.set;
   };
-  findTwice(library.components, [](const ComponentRow& row) { return row.formula; }, "component", faults);
+  findTwice(
+      library.components, [](const ComponentRow& row) { return row.formula; }, "component", faults);
   findTwice(library.species, reactionKey, "species", faults);
   findTwice(library.solids, reactionKey, "solid", faults);
-  findTwice(library.gases, [](const GasRow& row) { return row.id; }, "gas", faults);
+  findTwice(
+      library.gases, [](const GasRow& row) { return row.id; }, "gas", faults);
   findTwice(
       library.interactions,
       [](const InteractionRow& row) {

@@ -15,23 +15,21 @@ namespace {
 // Standard atomic weights, IUPAC/CIAAW abridged table 2021, from memory; 0 = no stable isotope.
 const std::map<std::string, double, std::less<>>& atomicWeights() {
   static const std::map<std::string, double, std::less<>> table = {
-      {"H", 1.008},    {"He", 4.0026},  {"Li", 6.94},    {"Be", 9.0122},  {"B", 10.81},
-      {"C", 12.011},   {"N", 14.007},   {"O", 15.999},   {"F", 18.998},   {"Ne", 20.180},
-      {"Na", 22.990},  {"Mg", 24.305},  {"Al", 26.982},  {"Si", 28.085},  {"P", 30.974},
-      {"S", 32.06},    {"Cl", 35.45},   {"Ar", 39.95},   {"K", 39.098},   {"Ca", 40.078},
-      {"Sc", 44.956},  {"Ti", 47.867},  {"V", 50.942},   {"Cr", 51.996},  {"Mn", 54.938},
-      {"Fe", 55.845},  {"Co", 58.933},  {"Ni", 58.693},  {"Cu", 63.546},  {"Zn", 65.38},
-      {"Ga", 69.723},  {"Ge", 72.630},  {"As", 74.922},  {"Se", 78.971},  {"Br", 79.904},
-      {"Kr", 83.798},  {"Rb", 85.468},  {"Sr", 87.62},   {"Y", 88.906},   {"Zr", 91.224},
-      {"Nb", 92.906},  {"Mo", 95.95},   {"Tc", 0.0},     {"Ru", 101.07},  {"Rh", 102.91},
-      {"Pd", 106.42},  {"Ag", 107.87},  {"Cd", 112.41},  {"In", 114.82},  {"Sn", 118.71},
-      {"Sb", 121.76},  {"Te", 127.60},  {"I", 126.90},   {"Xe", 131.29},  {"Cs", 132.91},
-      {"Ba", 137.33},  {"La", 138.91},  {"Ce", 140.12},  {"Pr", 140.91},  {"Nd", 144.24},
-      {"Pm", 0.0},     {"Sm", 150.36},  {"Eu", 151.96},  {"Gd", 157.25},  {"Tb", 158.93},
-      {"Dy", 162.50},  {"Ho", 164.93},  {"Er", 167.26},  {"Tm", 168.93},  {"Yb", 173.05},
-      {"Lu", 174.97},  {"Hf", 178.49},  {"Ta", 180.95},  {"W", 183.84},   {"Re", 186.21},
-      {"Os", 190.23},  {"Ir", 192.22},  {"Pt", 195.08},  {"Au", 196.97},  {"Hg", 200.59},
-      {"Tl", 204.38},  {"Pb", 207.2},   {"Bi", 208.98},  {"Th", 232.04},  {"U", 238.03},
+      {"H", 1.008},   {"He", 4.0026}, {"Li", 6.94},   {"Be", 9.0122}, {"B", 10.81},   {"C", 12.011},
+      {"N", 14.007},  {"O", 15.999},  {"F", 18.998},  {"Ne", 20.180}, {"Na", 22.990}, {"Mg", 24.305},
+      {"Al", 26.982}, {"Si", 28.085}, {"P", 30.974},  {"S", 32.06},   {"Cl", 35.45},  {"Ar", 39.95},
+      {"K", 39.098},  {"Ca", 40.078}, {"Sc", 44.956}, {"Ti", 47.867}, {"V", 50.942},  {"Cr", 51.996},
+      {"Mn", 54.938}, {"Fe", 55.845}, {"Co", 58.933}, {"Ni", 58.693}, {"Cu", 63.546}, {"Zn", 65.38},
+      {"Ga", 69.723}, {"Ge", 72.630}, {"As", 74.922}, {"Se", 78.971}, {"Br", 79.904}, {"Kr", 83.798},
+      {"Rb", 85.468}, {"Sr", 87.62},  {"Y", 88.906},  {"Zr", 91.224}, {"Nb", 92.906}, {"Mo", 95.95},
+      {"Tc", 0.0},    {"Ru", 101.07}, {"Rh", 102.91}, {"Pd", 106.42}, {"Ag", 107.87}, {"Cd", 112.41},
+      {"In", 114.82}, {"Sn", 118.71}, {"Sb", 121.76}, {"Te", 127.60}, {"I", 126.90},  {"Xe", 131.29},
+      {"Cs", 132.91}, {"Ba", 137.33}, {"La", 138.91}, {"Ce", 140.12}, {"Pr", 140.91}, {"Nd", 144.24},
+      {"Pm", 0.0},    {"Sm", 150.36}, {"Eu", 151.96}, {"Gd", 157.25}, {"Tb", 158.93}, {"Dy", 162.50},
+      {"Ho", 164.93}, {"Er", 167.26}, {"Tm", 168.93}, {"Yb", 173.05}, {"Lu", 174.97}, {"Hf", 178.49},
+      {"Ta", 180.95}, {"W", 183.84},  {"Re", 186.21}, {"Os", 190.23}, {"Ir", 192.22}, {"Pt", 195.08},
+      {"Au", 196.97}, {"Hg", 200.59}, {"Tl", 204.38}, {"Pb", 207.2},  {"Bi", 208.98}, {"Th", 232.04},
+      {"U", 238.03},
   };
   return table;
 }
@@ -74,7 +72,8 @@ class FormulaParser {
 
   double count() {
     const std::size_t start = m_at;
-    while (m_at < m_text.size() && (isDigit(m_text[m_at]) || (m_text[m_at] == '.' && !hydrateDotHere()))) ++m_at;
+    while (m_at < m_text.size() && (isDigit(m_text[m_at]) || (m_text[m_at] == '.' && !hydrateDotHere())))
+      ++m_at;
     if (m_at == start) return 1.0;
     double value = 0.0;
     const auto digits = m_text.substr(start, m_at - start);
@@ -103,7 +102,9 @@ class FormulaParser {
     const char c = m_text[m_at];
     if (c == '(') {
       ++m_at;
-      items(inside, true);
+      if (++m_depth > kDeepest) m_error = "it is nested too deep";
+      if (!m_error) items(inside, true);
+      --m_depth;
       if (m_error) return;
       if (m_at >= m_text.size()) {
         m_error = "a parenthesis is not closed";
@@ -139,11 +140,16 @@ class FormulaParser {
 
   void word() {
     m_opaque = true;
-    while (m_at < m_text.size() && (isLower(m_text[m_at]) || m_text[m_at] == '-' || m_text[m_at] == '_')) ++m_at;
+    while (m_at < m_text.size() && (isLower(m_text[m_at]) || m_text[m_at] == '-' || m_text[m_at] == '_'))
+      ++m_at;
   }
+
+  // Far deeper than any formula, shallow enough for the stack.
+  static constexpr int kDeepest = 20;
 
   std::string_view m_text;
   std::size_t m_at = 0;
+  int m_depth = 0;
   bool m_opaque = false;
   std::optional<std::string> m_error;
 };
@@ -152,7 +158,9 @@ model::Unexpected<model::Fault> bad(const std::string& text, const std::string& 
   return model::fail(model::Fault{
       .code = "bad_formula",
       .subject = text,
-      .detail = fmt::format("\"{}\" is no name of a species: {}; expected for example Cu(NH3)4^2+", text, reason), .where = {}});
+      .detail =
+          fmt::format("\"{}\" is no name of a species: {}; expected for example Cu(NH3)4^2+", text, reason),
+      .where = {}});
 }
 
 /// nullopt = not `^` digits? sign. A first digit of 0 is no magnitude.

@@ -43,9 +43,11 @@ void readDocument(TableReader& document, Draft& draft) {
 Faults sortedFaults(Faults faults) {
   const auto key = [](const Fault& fault) {
     const auto colon = fault.where.rfind(':');
-    return std::make_tuple(fault.where.substr(0, colon), lineOf(fault), fault.code, fault.subject, fault.detail);
+    return std::make_tuple(fault.where.substr(0, colon), lineOf(fault), fault.code, fault.subject,
+                           fault.detail);
   };
-  std::stable_sort(faults.begin(), faults.end(), [&](const Fault& a, const Fault& b) { return key(a) < key(b); });
+  std::stable_sort(faults.begin(), faults.end(),
+                   [&](const Fault& a, const Fault& b) { return key(a) < key(b); });
   const auto same = [&](const Fault& a, const Fault& b) { return key(a) == key(b); };
   faults.erase(std::unique(faults.begin(), faults.end(), same), faults.end());
   return faults;

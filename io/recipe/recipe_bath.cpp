@@ -25,14 +25,16 @@ void readChemistry(TableReader& bath, Draft& draft) {
   system.activityModel = bath.choice("activity_model", kActivityModels).value_or(system.activityModel);
   system.waterActivity = bath.flag("water_activity", false);
   if (system.waterActivity && system.activityModel != model::ActivityModel::Sit) {
-    bath.fault("water_activity", "not_used", "water_activity is true; only activity_model = \"sit\" knows it");
+    bath.fault("water_activity", "not_used",
+               "water_activity is true; only activity_model = \"sit\" knows it");
   }
   system.water_kg_L = bath.positive("water_kg_L");
   system.phTakenAtSample = bath.choice("ph_taken_at", kPhTakenAtSample).value_or(false);
   const auto sample_C = bath.number("sample_temperature_C");
   if (sample_C && (*sample_C < kColdest_C || *sample_C > kHottest_C)) {
-    bath.fault("sample_temperature_C", "out_of_range",
-               fmt::format("sample_temperature_C is {}; expected {} to {}", *sample_C, kColdest_C, kHottest_C));
+    bath.fault(
+        "sample_temperature_C", "out_of_range",
+        fmt::format("sample_temperature_C is {}; expected {} to {}", *sample_C, kColdest_C, kHottest_C));
   }
   if (system.phTakenAtSample) draft.recipe.sampleTemperature_C = sample_C;
   for (const std::string& word : bath.texts("margins_off")) {
@@ -50,7 +52,8 @@ void readChemistry(TableReader& bath, Draft& draft) {
 
 std::vector<std::string> marginNames() {
   std::vector<std::string> names;
-  for (std::size_t i = 0; i < model::kMarginCount; ++i) names.emplace_back(name(static_cast<model::MarginKind>(i)));
+  for (std::size_t i = 0; i < model::kMarginCount; ++i)
+    names.emplace_back(name(static_cast<model::MarginKind>(i)));
   return names;
 }
 
@@ -93,7 +96,8 @@ void readLimits(TableReader& document, Draft& draft) {
 std::optional<model::MarginLimit> readLimit(TableReader& parent, const std::string& key, bool rising) {
   auto table = parent.table(key);
   if (!table) return std::nullopt;
-  const model::MarginLimit limit{.caution = table->requiredNumber("caution"), .act = table->requiredNumber("act")};
+  const model::MarginLimit limit{.caution = table->requiredNumber("caution"),
+                                 .act = table->requiredNumber("act")};
   const bool ordered = rising ? limit.caution < limit.act : limit.act < limit.caution;
   if (table->has("caution") && table->has("act") && !ordered) {
     table->fault("act", "bad_limit",
@@ -116,9 +120,10 @@ std::optional<model::Guard> readGuard(TableReader& parent, const std::string& id
   for (const auto& bound : {guard.actLow, guard.cautionLow, guard.cautionHigh, guard.actHigh}) {
     if (!bound) continue;
     if (before && *bound <= *before) {
-      table->fault("", "bad_limit",
-                   fmt::format("guard goes from {} to {}; expected act_low < caution_low < caution_high < act_high",
-                               *before, *bound));
+      table->fault(
+          "", "bad_limit",
+          fmt::format("guard goes from {} to {}; expected act_low < caution_low < caution_high < act_high",
+                      *before, *bound));
     }
     before = bound;
   }

@@ -16,7 +16,8 @@ namespace {
 
 using model::SetBy;
 
-/// g/mol of OH^-, in which caustic is quoted unless as_formula_mass says otherwise (IUPAC 2021: 15.999 + 1.008).
+/// g/mol of OH^-, in which caustic is quoted unless as_formula_mass says otherwise (IUPAC 2021: 15.999
+/// + 1.008).
 constexpr double kHydroxideMass = 17.007;
 
 const Choices<bool> kRatioBy = {{"mole", true}, {"mass", false}};
@@ -28,11 +29,17 @@ struct ChannelReader {
 
 bool isTemperatureId(const std::string& id) { return id == "temperature" || id == "sample_temperature"; }
 
+/// Column heads of drop files that are no channels (FORMATS section 5).
+bool isColumnName(const std::string& id) {
+  static const std::set<std::string> names = {"time",  "tank",  "operator", "channel", "value", "unit",
+                                              "event", "stock", "amount",   "lot",     "note"};
+  return names.contains(id);
+}
+
 std::string readUnit(TableReader& reader, const std::string& key) {
   const std::string unit = reader.text(key, "");
   if (findUnit(unit)) return unit;
-  reader.fault(key, "unit_unknown",
-               fmt::format("{} is \"{}\"; expected one of: {}", key, unit, unitNames()));
+  reader.fault(key, "unit_unknown", fmt::format("{} is \"{}\"; expected one of: {}", key, unit, unitNames()));
   return unit;
 }
 
@@ -117,7 +124,8 @@ void mismatch(TableReader& reader, const Channel& channel, const std::string& ex
 }
 
 /// Sets what the store keeps, and how grams become moles.
-void settleUnits(TableReader& reader, const Draft& draft, Channel& channel, std::optional<double> asFormulaMass) {
+void settleUnits(TableReader& reader, const Draft& draft, Channel& channel,
+                 std::optional<double> asFormulaMass) {
   const auto index = readerOf(draft, channel.id);
   const model::Component* component = index ? &draft.recipe.system.components[*index] : nullptr;
   if (component != nullptr) {
@@ -127,7 +135,8 @@ void settleUnits(TableReader& reader, const Draft& draft, Channel& channel, std:
   const bool isMass = hasDimensionOf(channel.unit, "g/L");
   const bool isAmount = hasDimensionOf(channel.unit, "mol/L");
   channel.canonicalUnit = channel.unit;
-  if (isTemperatureId(channel.id) && !hasDimensionOf(channel.unit, "degC")) mismatch(reader, channel, "degC, degF or K");
+  if (isTemperatureId(channel.id) && !hasDimensionOf(channel.unit, "degC"))
+    mismatch(reader, channel, "degC, degF or K");
   if (hasDimensionOf(channel.unit, "degC")) channel.canonicalUnit = "degC";
   if (channel.id == "ph" && channel.unit != "pH") mismatch(reader, channel, "pH");
   if (isAmount || (isMass && channel.formulaMass > 0.0)) {
@@ -139,7 +148,8 @@ void settleUnits(TableReader& reader, const Draft& draft, Channel& channel, std:
   if (component->setBy == SetBy::Ph) {
     if (channel.unit != "pH") mismatch(reader, channel, "pH");
   } else if (!isMass && !isAmount) {
-    mismatch(reader, channel, fmt::format("a concentration, such as g/L, for component {}", component->formula));
+    mismatch(reader, channel,
+             fmt::format("a concentration, such as g/L, for component {}", component->formula));
   } else if (channel.canonicalUnit != "mol/L") {
     mismatch(reader, channel,
              fmt::format("mol/L, or a molar_mass for {} or as_formula_mass here", component->formula));
@@ -152,6 +162,10 @@ void readChannel(TableReader& reader, Draft& draft) {
   if (!channel.id.empty()) {
     reader.setSubject(fmt::format("channel {}", channel.id));
     checkId(reader, "id", channel.id);
+    if (isColumnName(channel.id)) {
+      reader.fault("id", "bad_id",
+                   fmt::format("\"{}\" heads a column of drop files and names no channel", channel.id));
+    }
     if (draft.channelIndex(channel.id)) {
       reader.fault("id", "duplicate", fmt::format("channel {} stands twice", channel.id));
     }
@@ -240,7 +254,8 @@ void checkComponentChannels(Draft& draft) {
 using Uses = std::map<std::string, std::set<std::string>>;  // channel -> channels its worksheet reads
 
 /// A channel that its worksheet leads back to, or empty.
-bool leadsTo(const Uses& uses, const std::string& from, const std::string& goal, std::set<std::string>& seen) {
+bool leadsTo(const Uses& uses, const std::string& from, const std::string& goal,
+             std::set<std::string>& seen) {
   const auto found = uses.find(from);
   if (found == uses.end() || !seen.insert(from).second) return false;
   return std::any_of(found->second.begin(), found->second.end(), [&](const std::string& next) {
@@ -263,9 +278,10 @@ void checkWorksheets(std::vector<ChannelReader>& readers, Draft& draft) {
     }
     const auto unit = findUnit(channel.unit);
     if (unit && worked->result.dimension != unit->dimension) {
-      sheet->fault("value", "unit_mismatch",
-                   fmt::format("\"{}\" works out to {}; expected {} ({})", channel.worksheet->expression,
-                               dimensionText(worked->result.dimension), dimensionText(unit->dimension), channel.unit));
+      sheet->fault(
+          "value", "unit_mismatch",
+          fmt::format("\"{}\" works out to {}; expected {} ({})", channel.worksheet->expression,
+                      dimensionText(worked->result.dimension), dimensionText(unit->dimension), channel.unit));
     }
     for (const std::string& name : worked->used) {
       const auto isLocal = [&](const auto& list, auto member) {
@@ -280,7 +296,8 @@ void checkWorksheets(std::vector<ChannelReader>& readers, Draft& draft) {
     const std::string& id = draft.recipe.channels[index].id;
     std::set<std::string> seen;
     if (leadsTo(uses, id, id, seen)) {
-      reader.table("worksheet")->fault("value", "circular", fmt::format("the worksheet of {} needs {} itself", id, id));
+      reader.table("worksheet")
+          ->fault("value", "circular", fmt::format("the worksheet of {} needs {} itself", id, id));
     }
   }
 }
@@ -291,8 +308,9 @@ void checkRatioUnits(TableReader& reader, const Draft& draft, const Ratio& ratio
     const auto index = draft.channelIndex(id);
     if (!index) {
       const auto names = draft.channelNames();
-      reader.fault(key, "unknown_channel", fmt::format("{} is \"{}\"; expected one of: {}{}", key, id, listed(names),
-                                                       didYouMean(id, names)));
+      reader.fault(
+          key, "unknown_channel",
+          fmt::format("{} is \"{}\"; expected one of: {}{}", key, id, listed(names), didYouMean(id, names)));
       continue;
     }
     const Channel& channel = draft.recipe.channels[*index];

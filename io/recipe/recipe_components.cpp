@@ -27,8 +27,8 @@ bool isForProton(SetBy setBy) {
 void checkSource(TableReader& reader, SetBy setBy, const ComponentSource& source) {
   const auto unused = [&](const std::string& key) {
     if (reader.has(key)) {
-      reader.fault(key, "not_used", fmt::format("{} has no meaning with set_by = \"{}\"", key,
-                                                reader.text("set_by", "")));
+      reader.fault(key, "not_used",
+                   fmt::format("{} has no meaning with set_by = \"{}\"", key, reader.text("set_by", "")));
     }
   };
   switch (setBy) {
@@ -81,9 +81,12 @@ void readComponent(TableReader& reader, Draft& draft) {
   model::Component component;
   component.formula = reader.requiredText("formula");
   if (!component.formula.empty()) reader.setSubject(fmt::format("component {}", component.formula));
-  const auto formula = component.formula.empty() ? std::nullopt : formulaIn(reader, "formula", component.formula);
+  const auto formula =
+      component.formula.empty() ? std::nullopt : formulaIn(reader, "formula", component.formula);
   component.charge = formula ? formula->charge : 0;
-  component.molarMass = massOf(reader, draft.library, formula.value_or(Formula{.text = component.formula, .charge = 0, .opaque = true, .elements = {}}));
+  component.molarMass = massOf(
+      reader, draft.library,
+      formula.value_or(Formula{.text = component.formula, .charge = 0, .opaque = true, .elements = {}}));
   const bool isProton = component.formula == model::kProton;
   reader.require("set_by");
   const auto setBy = reader.choice("set_by", kSetBy);
@@ -100,13 +103,15 @@ void readComponent(TableReader& reader, Draft& draft) {
   if (setBy) {
     checkSource(reader, *setBy, source);
     if (isForProton(*setBy) != isProton) {
-      reader.fault("set_by", "bad_set_by",
-                   fmt::format("set_by is \"{}\" for {}; expected {}", reader.text("set_by", ""), component.formula,
-                               isProton ? "ph, hydroxide or proton_total" : "that of a component other than H^+"));
+      reader.fault(
+          "set_by", "bad_set_by",
+          fmt::format("set_by is \"{}\" for {}; expected {}", reader.text("set_by", ""), component.formula,
+                      isProton ? "ph, hydroxide or proton_total" : "that of a component other than H^+"));
     }
     if (*setBy == SetBy::Ph && !source.channel) source.channel = "ph";
     if (*setBy == SetBy::Balance && component.charge == 0) {
-      reader.fault("set_by", "bad_balance", fmt::format("{} carries no charge: it cannot balance", component.formula));
+      reader.fault("set_by", "bad_balance",
+                   fmt::format("{} carries no charge: it cannot balance", component.formula));
     }
   }
   if (component.formula == model::kHydroxide || component.formula == model::kWater) {
@@ -131,7 +136,8 @@ void addProton(Draft& draft) {
     proton.molarMass = row != nullptr ? row->molarMass : 0.0;
     proton.setBy = SetBy::Ph;
     draft.recipe.system.components.push_back(proton);
-    draft.recipe.sources.push_back({.formula = model::kProton, .title = model::kProton, .channel = "ph", .mol_L = {}});
+    draft.recipe.sources.push_back(
+        {.formula = model::kProton, .title = model::kProton, .channel = "ph", .mol_L = {}});
   }
   draft.recipe.system.proton = *draft.component(model::kProton);
 }
@@ -159,8 +165,8 @@ void checkOneBalance(Draft& draft) {
   for (std::size_t i = 0; i < draft.componentReaders.size(); ++i) {
     if (components[i].setBy != SetBy::Balance) continue;
     if (!first.empty()) {
-      draft.componentReaders[i].fault(
-          "set_by", "bad_balance", fmt::format("{} balances already; only one ion can", first));
+      draft.componentReaders[i].fault("set_by", "bad_balance",
+                                      fmt::format("{} balances already; only one ion can", first));
     }
     first = components[i].formula;
   }
@@ -189,8 +195,8 @@ void resolveMetalAndLigands(TableReader& document, Draft& draft) {
       system.ligands.push_back(*index);
     } else {
       bath->fault("ligands", "unknown_component",
-                  fmt::format("ligands names \"{}\"; expected OH^- or a component that is no metal: {}{}", ligand,
-                              listed(names), didYouMean(ligand, names)));
+                  fmt::format("ligands names \"{}\"; expected OH^- or a component that is no metal: {}{}",
+                              ligand, listed(names), didYouMean(ligand, names)));
     }
   }
 }

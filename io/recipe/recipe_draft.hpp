@@ -14,8 +14,8 @@ namespace tw::io {
 
 struct Draft {
   Recipe recipe;
-  Library own;              ///< the recipe's own rows
-  const Library& library;   ///< outlives the draft
+  Library own;             ///< the recipe's own rows
+  const Library& library;  ///< outlives the draft
   std::vector<std::string> ligands, exclude;
   /// One per declared component, in order, for faults that later stages find.
   std::vector<TableReader> componentReaders;

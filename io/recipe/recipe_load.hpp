@@ -13,7 +13,8 @@ inline constexpr const char* kRecipeFormat = "tankward-recipe/1";
 inline constexpr const char* kShopFormat = "tankward-shop/1";
 
 /// As loadRecipe, with a library read before.
-model::Result<Recipe, model::Faults> loadRecipeWith(const std::filesystem::path& file, const Library& library);
+model::Result<Recipe, model::Faults> loadRecipeWith(const std::filesystem::path& file,
+                                                    const Library& library);
 
 /// By file and line, each fault once.
 model::Faults sortedFaults(model::Faults faults);

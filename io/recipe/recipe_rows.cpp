@@ -35,12 +35,14 @@ const ReactionRow* fromSets(const std::vector<ReactionRow>& rows, const std::str
 const ReactionRow* chosen(const std::vector<ReactionRow>& own, const std::vector<ReactionRow>& library,
                           const std::string& name, const std::vector<std::string>& sets) {
   if (const ReactionRow* row = fromSets(own, name, sets)) return row;
-  const auto any = std::find_if(own.begin(), own.end(), [&](const ReactionRow& row) { return row.name == name; });
+  const auto any =
+      std::find_if(own.begin(), own.end(), [&](const ReactionRow& row) { return row.name == name; });
   return any != own.end() ? &*any : fromSets(library, name, sets);
 }
 
 /// Names of both lists in order, each once: the library's, then what the recipe adds.
-std::vector<std::string> namesOf(const std::vector<ReactionRow>& library, const std::vector<ReactionRow>& own) {
+std::vector<std::string> namesOf(const std::vector<ReactionRow>& library,
+                                 const std::vector<ReactionRow>& own) {
   std::vector<std::string> names;
   std::set<std::string> seen;
   for (const auto* rows : {&library, &own}) {
@@ -115,8 +117,9 @@ void resolveSpecies(Draft& draft) {
       if (*index < draft.componentReaders.size()) {
         draft.componentReaders[*index].fault(
             "formula", "component_not_independent",
-            fmt::format("{} is a species that other components make ({}); leave one of them out, or exclude it",
-                        name, row->where));
+            fmt::format(
+                "{} is a species that other components make ({}); leave one of them out, or exclude it", name,
+                row->where));
       }
       continue;
     }
@@ -131,8 +134,8 @@ void checkOwnRows(Draft& draft, model::Faults& faults) {
       if (missing.empty()) continue;
       faults.push_back({.code = "unknown_component",
                         .subject = row.name,
-                        .detail = fmt::format("{} needs {}; expected components of this recipe: {}{}", row.name,
-                                              listed(missing), listed(draft.componentNames()),
+                        .detail = fmt::format("{} needs {}; expected components of this recipe: {}{}",
+                                              row.name, listed(missing), listed(draft.componentNames()),
                                               didYouMean(missing.front(), draft.componentNames())),
                         .where = row.where});
     }
@@ -149,15 +152,17 @@ void checkExcludeAndSets(TableReader& document, const Draft& draft) {
                 fmt::format("exclude names \"{}\", which no row makes{}", name, didYouMean(name, known)));
   }
   std::vector<std::string> sets = {kDefaultSet};
-  for (const auto* rows : {&draft.library.species, &draft.library.solids, &draft.own.species, &draft.own.solids}) {
+  for (const auto* rows :
+       {&draft.library.species, &draft.library.solids, &draft.own.species, &draft.own.solids}) {
     for (const ReactionRow& row : *rows) {
       if (!holds(sets, row.set)) sets.push_back(row.set);
     }
   }
   for (const std::string& set : draft.recipe.sets) {
     if (holds(sets, set)) continue;
-    bath->fault("sets", "unknown_set",
-                fmt::format("sets names \"{}\"; expected some of: {}{}", set, listed(sets), didYouMean(set, sets)));
+    bath->fault(
+        "sets", "unknown_set",
+        fmt::format("sets names \"{}\"; expected some of: {}{}", set, listed(sets), didYouMean(set, sets)));
   }
 }
 
@@ -165,7 +170,8 @@ void readWatchLimits(TableReader& reader, model::Solid& solid) {
   auto limits = reader.table("limits");
   if (!limits) return;
   for (const std::string& name : marginNames()) {
-    if (const auto limit = readLimit(*limits, name)) solid.limits.emplace_back(*model::marginKind(name), *limit);
+    if (const auto limit = readLimit(*limits, name))
+      solid.limits.emplace_back(*model::marginKind(name), *limit);
   }
   solid.saturationLimit = readLimit(*limits, "lg_saturation", true);
   if (solid.saturationLimit && solid.role != model::SolidRole::Scale) {
@@ -180,8 +186,9 @@ const ReactionRow* watchedRow(TableReader& reader, const std::string& id, const 
   if (row == nullptr) {
     const bool elsewhere = holds(known, id);
     reader.fault("solid", "unknown_solid",
-                 elsewhere ? fmt::format("{} stands in no set of this recipe ({})", id, listed(draft.recipe.sets))
-                           : fmt::format("no row has the solid \"{}\"{}", id, didYouMean(id, known)));
+                 elsewhere
+                     ? fmt::format("{} stands in no set of this recipe ({})", id, listed(draft.recipe.sets))
+                     : fmt::format("no row has the solid \"{}\"{}", id, didYouMean(id, known)));
     return nullptr;
   }
   const auto missing = missingParts(*row, draft);
@@ -205,7 +212,8 @@ void readWatch(TableReader& reader, Draft& draft) {
   reader.finish();
   if (solid.id.empty()) return;
   const auto& solids = draft.recipe.system.solids;
-  if (std::any_of(solids.begin(), solids.end(), [&](const model::Solid& other) { return other.id == solid.id; })) {
+  if (std::any_of(solids.begin(), solids.end(),
+                  [&](const model::Solid& other) { return other.id == solid.id; })) {
     reader.fault("solid", "duplicate", fmt::format("{} is watched already", solid.id));
     return;
   }

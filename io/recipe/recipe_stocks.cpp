@@ -39,7 +39,8 @@ void checkSupplies(TableReader& reader, const Draft& draft, const Stock& stock) 
   }
   if (std::abs(charge) > kChargeTolerance * size) {
     reader.fault("supplies", "charge_unbalanced",
-                 fmt::format("{} supplies a net charge of {:+g} mol per {}; expected 0", stock.id, charge, stock.unit));
+                 fmt::format("{} supplies a net charge of {:+g} mol per {}; expected 0", stock.id, charge,
+                             stock.unit));
   }
 }
 

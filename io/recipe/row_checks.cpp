@@ -35,8 +35,9 @@ void checkBalance(TableReader& row, const std::string& key, const Formula& produ
     for (const auto& [symbol, atoms] : part->elements) elements[symbol] += nu * atoms;
   }
   if (std::abs(charge - product.charge) > kBalanceTolerance) {
-    row.fault(key, "charge_unbalanced",
-              fmt::format("{} has charge {:+d}, {} adds up to {:+g}", product.text, product.charge, key, charge));
+    row.fault(
+        key, "charge_unbalanced",
+        fmt::format("{} has charge {:+d}, {} adds up to {:+g}", product.text, product.charge, key, charge));
   }
   if (opaque) return;
   for (const auto& [symbol, atoms] : product.elements) elements[symbol] -= atoms;

@@ -69,16 +69,18 @@ void readListen(TableReader& document, Shop& shop) {
   if (shop.listen.empty()) return;
   const auto address = hostAndPort(shop.listen);
   if (!address) {
-    document.fault("listen", "bad_address",
-                   fmt::format("listen is \"{}\"; expected address:port, such as 127.0.0.1:8484", shop.listen));
+    document.fault(
+        "listen", "bad_address",
+        fmt::format("listen is \"{}\"; expected address:port, such as 127.0.0.1:8484", shop.listen));
     return;
   }
   if (isLoopback(address->first)) return;
   if (shop.tlsCert.empty() || shop.signIn != "required") {
-    document.fault("listen", "unsafe_listen",
-                   fmt::format("listen is \"{}\", which other machines reach; expected a loopback address, or [tls] "
-                               "with cert and key and sign_in = \"required\"",
-                               shop.listen));
+    document.fault(
+        "listen", "unsafe_listen",
+        fmt::format("listen is \"{}\", which other machines reach; expected a loopback address, or [tls] "
+                    "with cert and key and sign_in = \"required\"",
+                    shop.listen));
   }
 }
 
@@ -90,8 +92,9 @@ void readTimeZone(TableReader& document, Shop& shop) {
            std::string("_+-/").find(c) != std::string::npos;
   };
   if (shop.timeZone.empty() || !std::all_of(shop.timeZone.begin(), shop.timeZone.end(), fits)) {
-    document.fault("time_zone", "bad_time_zone",
-                   fmt::format("time_zone is \"{}\"; expected an IANA name, such as Europe/Paris", shop.timeZone));
+    document.fault(
+        "time_zone", "bad_time_zone",
+        fmt::format("time_zone is \"{}\"; expected an IANA name, such as Europe/Paris", shop.timeZone));
   }
 }
 
@@ -103,7 +106,8 @@ void readPlaces(TableReader& document, Shop& shop) {
     shop.recipeDirs.push_back(fromFile(shop, folder));
     std::error_code code;
     if (!fs::is_directory(shop.recipeDirs.back(), code)) {
-      document.fault("recipes", "cannot_read", fmt::format("recipes names \"{}\", which is no folder", folder));
+      document.fault("recipes", "cannot_read",
+                     fmt::format("recipes names \"{}\", which is no folder", folder));
     }
   }
   if (const auto constants = document.text("constants")) shop.constants = fromFile(shop, *constants);

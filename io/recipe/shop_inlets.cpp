@@ -26,7 +26,8 @@ int wholeOf(TableReader& reader, const std::string& key, int fallback, const std
   for (const int one : allowed) {
     if (*value == one) return one;
   }
-  reader.fault(key, "unknown_value", fmt::format("{} is {}; expected one of: {}", key, *value, fmt::join(allowed, ", ")));
+  reader.fault(key, "unknown_value",
+               fmt::format("{} is {}; expected one of: {}", key, *value, fmt::join(allowed, ", ")));
   return fallback;
 }
 
@@ -57,9 +58,10 @@ void refuseSecrets(TableReader& reader) {
   for (const char* key : {"password", "token", "secret"}) {
     if (!reader.has(key)) continue;
     reader.text(key);
-    reader.fault(key, "secret_in_file",
-                 fmt::format("{} must not stand in this file; expected {}_file with the path of a file that holds it",
-                             key, key));
+    reader.fault(
+        key, "secret_in_file",
+        fmt::format("{} must not stand in this file; expected {}_file with the path of a file that holds it",
+                    key, key));
   }
 }
 
@@ -72,11 +74,13 @@ void readFrame(TableReader& reader, SerialPort& serial) {
   serial.pattern = reader.text("pattern", "");
   serial.checksum = reader.choice("checksum", words({"none", "xor"})).value_or(serial.checksum);
   if (serial.frame == FrameKind::Columns && serial.columns.empty()) {
-    reader.fault("columns", "missing_key", "frame is \"columns\"; expected columns with the channels in order");
+    reader.fault("columns", "missing_key",
+                 "frame is \"columns\"; expected columns with the channels in order");
   }
   if (serial.frame == FrameKind::Pattern && serial.pattern.find("(?<") == std::string::npos) {
-    reader.fault("pattern", "missing_key",
-                 "frame is \"pattern\"; expected pattern with a named group for each channel, such as (?<ph>[0-9.]+)");
+    reader.fault(
+        "pattern", "missing_key",
+        "frame is \"pattern\"; expected pattern with a named group for each channel, such as (?<ph>[0-9.]+)");
   }
   if (serial.separator.size() != 1) {
     reader.fault("separator", "unknown_value",
@@ -95,7 +99,9 @@ DropFolder readDrop(TableReader& reader) {
   drop.source = reader.text("source", "");
   drop.decimal = reader.choice("decimal", words({".", ","})).value_or("");
   drop.separator = reader.choice("separator", words({",", ";", "\t", "|"})).value_or("");
-  drop.encoding = reader.choice("encoding", words({"utf-8", "utf-16", "utf-16le", "utf-16be", "latin1", "windows-1252"})).value_or("");
+  drop.encoding =
+      reader.choice("encoding", words({"utf-8", "utf-16", "utf-16le", "utf-16be", "latin1", "windows-1252"}))
+          .value_or("");
   drop.dateOrder = reader.choice("date_order", words({"dmy", "mdy", "ymd"})).value_or("");
   reader.allowRemarks();
   reader.finish();
@@ -112,8 +118,9 @@ SerialPort readSerial(TableReader& reader, const std::vector<std::string>& tanks
                  fmt::format("tank is \"{}\"; expected one of: {}{}", serial.tank, listed(tanks),
                              didYouMean(serial.tank, tanks)));
   }
-  serial.baud = wholeOf(reader, "baud", serial.baud,
-                        {300, 600, 1200, 2400, 4800, 9600, 19200, 38400, 57600, 115200, 230400, 460800, 921600});
+  serial.baud =
+      wholeOf(reader, "baud", serial.baud,
+              {300, 600, 1200, 2400, 4800, 9600, 19200, 38400, 57600, 115200, 230400, 460800, 921600});
   serial.dataBits = wholeOf(reader, "data_bits", serial.dataBits, {5, 6, 7, 8});
   serial.stopBits = wholeOf(reader, "stop_bits", serial.stopBits, {1, 2});
   serial.parity = reader.choice("parity", words({"none", "odd", "even"})).value_or(serial.parity);
@@ -139,7 +146,8 @@ Route readRoute(TableReader& reader) {
     }
   }
   refuseSecrets(reader);
-  route.minPriority = reader.choice("min_priority", words({"high", "medium", "low"})).value_or(route.minPriority);
+  route.minPriority =
+      reader.choice("min_priority", words({"high", "medium", "low"})).value_or(route.minPriority);
   route.after = reader.text("after", "");
   if (const auto minutes = reader.notNegative("escalate_after_min")) {
     route.settings["escalate_after_min"] = fmt::format("{}", *minutes);

@@ -130,8 +130,8 @@ void overrideFault(const Tank& tank, const std::string& what, const std::string&
                    const std::vector<std::string>& known, Faults& faults) {
   faults.push_back({.code = "unknown_" + what,
                     .subject = "tank " + tank.id,
-                    .detail = fmt::format("tank {} overrides {} \"{}\"; recipe {} has: {}{}", tank.id, what, id,
-                                          tank.recipeId, listed(known), didYouMean(id, known)),
+                    .detail = fmt::format("tank {} overrides {} \"{}\"; recipe {} has: {}{}", tank.id, what,
+                                          id, tank.recipeId, listed(known), didYouMean(id, known)),
                     .where = tank.where});
 }
 
@@ -143,20 +143,22 @@ void checkOverrides(const Tank& tank, const Recipe& recipe, Faults& faults) {
     if (recipe.channel(id) == nullptr) overrideFault(tank, "channel", id, channels, faults);
   }
   for (const auto& [id, override] : tank.watch) {
-    if (std::find(solids.begin(), solids.end(), id) == solids.end()) overrideFault(tank, "solid", id, solids, faults);
+    if (std::find(solids.begin(), solids.end(), id) == solids.end())
+      overrideFault(tank, "solid", id, solids, faults);
   }
   for (const Channel& channel : recipeForTank(recipe, tank).channels) {
     if (channel.low <= channel.target && channel.target <= channel.high &&
         channel.plausibleLow <= channel.low && channel.high <= channel.plausibleHigh) {
       continue;
     }
-    faults.push_back({.code = "bad_window",
-                      .subject = "tank " + tank.id,
-                      .detail = fmt::format("channel {} would have low {}, target {}, high {}; expected low <= target "
-                                            "<= high inside {} to {}",
-                                            channel.id, channel.low, channel.target, channel.high,
-                                            channel.plausibleLow, channel.plausibleHigh),
-                      .where = tank.where});
+    faults.push_back(
+        {.code = "bad_window",
+         .subject = "tank " + tank.id,
+         .detail = fmt::format("channel {} would have low {}, target {}, high {}; expected low <= target "
+                               "<= high inside {} to {}",
+                               channel.id, channel.low, channel.target, channel.high, channel.plausibleLow,
+                               channel.plausibleHigh),
+         .where = tank.where});
   }
 }
 
@@ -188,19 +190,20 @@ model::Result<std::map<std::string, Recipe>, Faults> loadShopRecipes(const Shop&
     for (const Tank& tank : line.tanks) {
       const auto found = files.find(tank.recipeId);
       if (found == files.end()) {
-        faults.push_back({.code = "unknown_recipe",
-                          .subject = "tank " + tank.id,
-                          .detail = fmt::format("recipe is \"{}\"; the shop's folders have: {}{}", tank.recipeId,
-                                                listed(known), didYouMean(tank.recipeId, known)),
-                          .where = tank.where});
+        faults.push_back(
+            {.code = "unknown_recipe",
+             .subject = "tank " + tank.id,
+             .detail = fmt::format("recipe is \"{}\"; the shop's folders have: {}{}", tank.recipeId,
+                                   listed(known), didYouMean(tank.recipeId, known)),
+             .where = tank.where});
         continue;
       }
       if (failed.contains(tank.recipeId)) continue;
       if (found->second.size() > 1) {
         faults.push_back({.code = "duplicate",
                           .subject = tank.recipeId,
-                          .detail = fmt::format("two files have the recipe {}; the other is {}", tank.recipeId,
-                                                found->second[0].string()),
+                          .detail = fmt::format("two files have the recipe {}; the other is {}",
+                                                tank.recipeId, found->second[0].string()),
                           .where = found->second[1].string()});
         failed.insert(tank.recipeId);
         continue;

@@ -33,12 +33,12 @@ model::Result<TomlFile, model::Faults> readToml(const std::filesystem::path& pat
   const bool there = std::filesystem::exists(path, code);
   std::ifstream stream(path, std::ios::binary);
   if (!there || std::filesystem::is_directory(path, code) || !stream) {
-    return model::fail(model::Faults{
-        {.code = "cannot_read",
-         .subject = path.string(),
-         .detail = there ? "the file cannot be opened for reading" : "there is no such file",
-         .where = path.string(),
-         .kind = there ? model::FaultKind::Machine : model::FaultKind::Input}});
+    return model::fail(
+        model::Faults{{.code = "cannot_read",
+                       .subject = path.string(),
+                       .detail = there ? "the file cannot be opened for reading" : "there is no such file",
+                       .where = path.string(),
+                       .kind = there ? model::FaultKind::Machine : model::FaultKind::Input}});
   }
   TomlFile file{.path = path, .bytes = {}, .root = {}};
   file.bytes.assign(std::istreambuf_iterator<char>(stream), {});
@@ -94,7 +94,12 @@ std::string TableReader::path(const std::string& key) const {
 }
 
 void TableReader::fault(const std::string& key, const std::string& code, const std::string& detail) {
-  m_faults->push_back({.code = code, .subject = path(key), .detail = detail, .where = where(key)});
+  // A message stands alone: it names its table where the sentence does not.
+  const bool named = m_subject.empty() || detail.find(m_subject) != std::string::npos;
+  m_faults->push_back({.code = code,
+                       .subject = path(key),
+                       .detail = named ? detail : m_subject + ": " + detail,
+                       .where = where(key)});
 }
 
 void TableReader::wrongType(const std::string& key, const toml::node& node, const std::string& expected) {
@@ -103,8 +108,9 @@ void TableReader::wrongType(const std::string& key, const toml::node& node, cons
 
 void TableReader::notOneOf(const std::string& key, const std::string& word,
                            const std::vector<std::string>& names) {
-  fault(key, "unknown_value",
-        fmt::format("{} is \"{}\"; expected one of: {}{}", key, word, listed(names), didYouMean(word, names)));
+  fault(
+      key, "unknown_value",
+      fmt::format("{} is \"{}\"; expected one of: {}{}", key, word, listed(names), didYouMean(word, names)));
 }
 
 std::optional<double> TableReader::finite(const std::string& key, const toml::node& node) {
@@ -160,13 +166,15 @@ double TableReader::requiredNumber(const std::string& key) {
 
 std::optional<double> TableReader::positive(const std::string& key) {
   const auto value = number(key);
-  if (value && *value <= 0.0) fault(key, "out_of_range", fmt::format("{} is {}; expected more than 0", key, *value));
+  if (value && *value <= 0.0)
+    fault(key, "out_of_range", fmt::format("{} is {}; expected more than 0", key, *value));
   return value;
 }
 
 std::optional<double> TableReader::notNegative(const std::string& key) {
   const auto value = number(key);
-  if (value && *value < 0.0) fault(key, "out_of_range", fmt::format("{} is {}; expected 0 or more", key, *value));
+  if (value && *value < 0.0)
+    fault(key, "out_of_range", fmt::format("{} is {}; expected 0 or more", key, *value));
   return value;
 }
 
@@ -210,7 +218,8 @@ std::optional<std::pair<double, double>> TableReader::interval(const std::string
   const auto high = finite(key, *array->get(1));
   if (!low || !high) return std::nullopt;
   if (*low >= *high) {
-    fault(key, "bad_window", fmt::format("{} is [{}, {}]; expected the lower number first", key, *low, *high));
+    fault(key, "bad_window",
+          fmt::format("{} is [{}, {}]; expected the lower number first", key, *low, *high));
     return std::nullopt;
   }
   return std::pair{*low, *high};

@@ -120,7 +120,8 @@ model::Result<double> convert(double value, const std::string& from, const std::
     return model::fail(model::Fault{.code = "unit_unknown",
                                     .subject = source ? to : from,
                                     .detail = fmt::format("unit \"{}\" is not known; expected one of: {}",
-                                                          source ? to : from, unitNames()), .where = {}});
+                                                          source ? to : from, unitNames()),
+                                    .where = {}});
   }
   if (source->name == goal->name) return value;
   if (source->dimension == goal->dimension) return fromBase(*goal, toBase(*source, value));
@@ -133,7 +134,8 @@ model::Result<double> convert(double value, const std::string& from, const std::
       .code = "unit_mismatch",
       .subject = from,
       .detail = fmt::format("\"{}\" cannot become \"{}\"{}", from, to,
-                            step != 0 ? ": no formula mass is known to turn grams into moles" : ""), .where = {}});
+                            step != 0 ? ": no formula mass is known to turn grams into moles" : ""),
+      .where = {}});
 }
 
 }  // namespace tw::io

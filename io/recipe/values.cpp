@@ -26,19 +26,22 @@ Fault missing(const Recipe& recipe, const std::string& id) {
   return {.code = "missing_channel",
           .subject = id,
           .detail = fmt::format("the value of {}{} is missing", id,
-                                channel != nullptr ? " (" + channel->unit + ")" : std::string()), .where = {}};
+                                channel != nullptr ? " (" + channel->unit + ")" : std::string()),
+          .where = {}};
 }
 
 }  // namespace
 
 model::Result<double> toCanonical(const Channel& channel, double value, const std::string& unit) {
-  auto converted = convert(value, unit.empty() ? channel.unit : unit, channel.canonicalUnit, channel.formulaMass);
+  auto converted =
+      convert(value, unit.empty() ? channel.unit : unit, channel.canonicalUnit, channel.formulaMass);
   if (converted) return converted;
-  return model::fail(Fault{.code = "unit_mismatch",
-                           .subject = channel.id,
-                           .detail = fmt::format("{} in \"{}\": {}; expected {}", channel.id,
-                                                 unit.empty() ? channel.unit : unit, converted.error().detail,
-                                                 channel.unit), .where = {}});
+  return model::fail(
+      Fault{.code = "unit_mismatch",
+            .subject = channel.id,
+            .detail = fmt::format("{} in \"{}\": {}; expected {}", channel.id,
+                                  unit.empty() ? channel.unit : unit, converted.error().detail, channel.unit),
+            .where = {}});
 }
 
 double fromCanonical(const Channel& channel, double canonical) {
@@ -101,7 +104,8 @@ std::vector<model::GuardValue> guardValues(const Recipe& recipe, const ChannelVa
   for (const Channel& channel : recipe.channels) {
     const auto value = values.find(channel.id);
     if (!channel.guard || value == values.end()) continue;
-    found.push_back({.guard = *channel.guard, .value = fromCanonical(channel, value->second), .target = channel.target});
+    found.push_back(
+        {.guard = *channel.guard, .value = fromCanonical(channel, value->second), .target = channel.target});
   }
   for (const RatioValue& ratio : ratioValues(recipe, values)) {
     if (!ratio.ratio->guard) continue;

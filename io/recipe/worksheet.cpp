@@ -39,7 +39,8 @@ class ExpressionParser {
   static constexpr int kDeepest = 100;
 
   void skipBlanks() {
-    while (m_at < m_text.size() && (m_text[m_at] == ' ' || m_text[m_at] == '\t' || m_text[m_at] == '\n')) ++m_at;
+    while (m_at < m_text.size() && (m_text[m_at] == ' ' || m_text[m_at] == '\t' || m_text[m_at] == '\n'))
+      ++m_at;
   }
   bool take(char c) {
     skipBlanks();
@@ -51,7 +52,8 @@ class ExpressionParser {
     if (!m_fault) {
       m_fault = Fault{.code = "bad_expression",
                       .subject = std::string(m_text),
-                      .detail = fmt::format("\"{}\" cannot be worked out: {}", m_text, reason), .where = {}};
+                      .detail = fmt::format("\"{}\" cannot be worked out: {}", m_text, reason),
+                      .where = {}};
     }
     return {};
   }
@@ -68,7 +70,8 @@ class ExpressionParser {
                         .subject = std::string(m_text),
                         .detail = fmt::format("\"{}\" {} {} {} {}", m_text, plus ? "adds" : "subtracts",
                                               dimensionText(right.dimension), plus ? "to" : "from",
-                                              dimensionText(left.dimension)), .where = {}};
+                                              dimensionText(left.dimension)),
+                        .where = {}};
         break;
       }
       left.value += plus ? right.value : -right.value;
@@ -126,7 +129,8 @@ class ExpressionParser {
     const std::string_view rest = m_text.substr(m_at);
     std::string found;
     for (const auto& [known, value] : m_names) {
-      const bool ends = rest.size() == known.size() || !isNameChar(rest[std::min(known.size(), rest.size() - 1)]);
+      const bool ends =
+          rest.size() == known.size() || !isNameChar(rest[std::min(known.size(), rest.size() - 1)]);
       if (known.size() > found.size() && rest.starts_with(known) && ends) found = known;
     }
     if (found.empty()) return unknown(rest);
@@ -144,7 +148,8 @@ class ExpressionParser {
     m_fault = Fault{.code = "unknown_name",
                     .subject = word,
                     .detail = fmt::format("\"{}\" in \"{}\" is no input, constant or channel{}", word, m_text,
-                                          didYouMean(word, known)), .where = {}};
+                                          didYouMean(word, known)),
+                    .where = {}};
     return {};
   }
 
@@ -172,7 +177,8 @@ model::Result<double> inputValue(const Channel& channel, const WorksheetInput& i
   const auto found = given.find(input.id);
   if (found == given.end()) {
     if (input.defaultValue) return *input.defaultValue;
-    return failed(channel, "missing_input", fmt::format("{} of {} is missing ({})", input.id, channel.id, input.unit));
+    return failed(channel, "missing_input",
+                  fmt::format("{} of {} is missing ({})", input.id, channel.id, input.unit));
   }
   const double value = found->second;
   const bool limited = input.plausibleLow < input.plausibleHigh;

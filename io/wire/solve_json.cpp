@@ -53,7 +53,8 @@ json perLigand(const model::MarginSet& set) {
   for (const auto& [ligand, margin] : set.byLigand) {
     object[ligand] = json();
     if (!margin) continue;
-    object[ligand] = {{"mol_L", number(margin->value)}, {"fraction", number(margin->fraction)}, {"solid", margin->solid}};
+    object[ligand] = {
+        {"mol_L", number(margin->value)}, {"fraction", number(margin->fraction)}, {"solid", margin->solid}};
   }
   return object;
 }
@@ -83,18 +84,24 @@ json margins(const model::LiquorReport& report) {
 
 const char* roleName(model::SolidRole role) {
   switch (role) {
-    case model::SolidRole::Aged: return "aged";
-    case model::SolidRole::Scale: return "scale";
-    case model::SolidRole::Sludge: break;
+    case model::SolidRole::Aged:
+      return "aged";
+    case model::SolidRole::Scale:
+      return "scale";
+    case model::SolidRole::Sludge:
+      break;
   }
   return "sludge";
 }
 
 const char* modelName(model::ActivityModel activityModel) {
   switch (activityModel) {
-    case model::ActivityModel::Davies: return "davies";
-    case model::ActivityModel::Sit: return "sit";
-    case model::ActivityModel::Conditional: break;
+    case model::ActivityModel::Davies:
+      return "davies";
+    case model::ActivityModel::Sit:
+      return "sit";
+    case model::ActivityModel::Conditional:
+      break;
   }
   return "conditional";
 }
@@ -165,8 +172,9 @@ json liquor(const model::LiquorReport& report) {
 
 }  // namespace
 
-std::string solveJson(const Recipe& recipe, const model::LiquorReport& report, const model::Judgement& judgement,
-                      const std::vector<std::string>& extraWarnings, int indent) {
+std::string solveJson(const Recipe& recipe, const model::LiquorReport& report,
+                      const model::Judgement& judgement, const std::vector<std::string>& extraWarnings,
+                      int indent) {
   json object = {{"recipe", recipe.id},
                  {"recipe_sha256", recipe.sha256},
                  {"resolved_sha256", recipe.resolvedSha256},

@@ -24,7 +24,8 @@ std::vector<std::string> sharedSpecies(const std::vector<model::SweepPoint>& poi
   return formulas;
 }
 
-std::vector<std::string> columns(const model::ChemicalSystem& system, const std::vector<std::string>& formulas) {
+std::vector<std::string> columns(const model::ChemicalSystem& system,
+                                 const std::vector<std::string>& formulas) {
   std::vector<std::string> names = {"x", "ph", "pM"};
   for (const auto& solid : system.solids) names.push_back("lg_saturation:" + solid.id);
   for (const auto& formula : formulas) names.push_back("share:" + formula);

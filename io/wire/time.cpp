@@ -81,7 +81,8 @@ std::string toRfc3339(Instant at, minutes offset) {
   if (time.subseconds().count() != 0) text += fmt::format(".{:03}", time.subseconds().count());
   if (offset == minutes{0}) return text + "Z";
   const auto size = offset < minutes{0} ? -offset : offset;
-  return text + fmt::format("{}{:02}:{:02}", offset < minutes{0} ? '-' : '+', size.count() / 60, size.count() % 60);
+  return text +
+         fmt::format("{}{:02}:{:02}", offset < minutes{0} ? '-' : '+', size.count() / 60, size.count() % 60);
 }
 
 std::optional<StampedTime> parseRfc3339(const std::string& text) {
@@ -103,10 +104,12 @@ std::optional<StampedTime> parseRfc3339(const std::string& text) {
     fraction = scan.milliseconds();
   }
   const minutes offset = readOffset(scan);
-  const std::chrono::year_month_day date{std::chrono::year{year}, std::chrono::month{static_cast<unsigned>(month)},
+  const std::chrono::year_month_day date{std::chrono::year{year},
+                                         std::chrono::month{static_cast<unsigned>(month)},
                                          std::chrono::day{static_cast<unsigned>(day)}};
   // A leap second (60) is a valid text; it is the instant at which the next minute begins.
-  if (!scan.good() || !scan.atEnd() || !date.ok() || hour > 23 || minute > 59 || second > 60) return std::nullopt;
+  if (!scan.good() || !scan.atEnd() || !date.ok() || hour > 23 || minute > 59 || second > 60)
+    return std::nullopt;
   const Instant local = std::chrono::sys_days{date} + std::chrono::hours{hour} + minutes{minute} +
                         std::chrono::seconds{second} + milliseconds{fraction};
   return StampedTime{local - offset, offset};

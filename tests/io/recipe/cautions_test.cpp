@@ -49,7 +49,8 @@ TEST(Cautions, WaterToAHarmlessTankNeedsNoRule) { EXPECT_TRUE(kindRulesFor({"wat
 
 TEST(Cautions, RulesNameOnlyKnownKindsAndHazards) {
   for (const KindRule& rule : kindRules()) {
-    EXPECT_NE(std::find(stockKinds().begin(), stockKinds().end(), rule.kind), stockKinds().end()) << rule.kind;
+    EXPECT_NE(std::find(stockKinds().begin(), stockKinds().end(), rule.kind), stockKinds().end())
+        << rule.kind;
     EXPECT_NE(findCaution(rule.hazard), nullptr) << rule.hazard;
     EXPECT_FALSE(rule.reason.empty());
   }

@@ -56,7 +56,8 @@ TEST(Check, ListsEachSpeciesAndSolidThatTakesPartWithItsSetAndSource) {
   folder.write("constants/a.toml", kConstants);
   folder.write("r.toml", kRecipe);
   const std::string list = listPath(folder.path());
-  for (const char* text : {"sample-bath", "species NH4^+ | set I0", "solid Cu(OH)2 fresh | set I0", "invented"}) {
+  for (const char* text :
+       {"sample-bath", "species NH4^+ | set I0", "solid Cu(OH)2 fresh | set I0", "invented"}) {
     EXPECT_NE(list.find(text), std::string::npos) << text << "\n" << list;
   }
   EXPECT_EQ(list.find("citrate"), std::string::npos);

@@ -35,9 +35,11 @@ TEST_P(BadConstants, NamesFileLineAndReason) {
   const std::string where = file.string() + ":" + std::to_string(lineOf(text, row.near));
   bool found = false;
   for (const auto& fault : library.error()) {
-    found = found || (fault.code == row.code && fault.where == where && fault.detail.find(row.says) != std::string::npos);
+    found = found || (fault.code == row.code && fault.where == where &&
+                      fault.detail.find(row.says) != std::string::npos);
   }
-  EXPECT_TRUE(found) << "expected " << where << " [" << row.code << "] " << row.says << "\n" << shown(library.error());
+  EXPECT_TRUE(found) << "expected " << where << " [" << row.code << "] " << row.says << "\n"
+                     << shown(library.error());
 }
 
 INSTANTIATE_TEST_SUITE_P(
@@ -47,28 +49,34 @@ INSTANTIATE_TEST_SUITE_P(
                  "charge_unbalanced", "\"H^+\" = 2", "charge +1"},
         FaultRow{"element_without_water", "\"H2O\" = 1, \"H^+\" = -1", "\"H^+\" = -1", "element_unbalanced",
                  "from = { \"Cu^2+\" = 1, \"H^+\" = -1", "state H2O"},
-        FaultRow{"solid_charge", "\"OH^-\" = 2 }\nlg_K = -19", "\"OH^-\" = 3 }\nlg_K = -19", "charge_unbalanced",
-                 "\"OH^-\" = 3", "adds up to -1"},
+        FaultRow{"solid_charge", "\"OH^-\" = 2 }\nlg_K = -19", "\"OH^-\" = 3 }\nlg_K = -19",
+                 "charge_unbalanced", "\"OH^-\" = 3", "adds up to -1"},
         FaultRow{"word_ligand_charge", "Cu(citrate)^-", "Cu(citrate)^2-", "charge_unbalanced",
                  "\"citrate^3-\" = 1 }", "charge -2"},
         FaultRow{"empty_source", "lg_K = 12.0\nsigma = 0.1\ndH_kJ_mol = -92.0\nsource = \"invented\"",
-                 "lg_K = 12.0\nsigma = 0.1\ndH_kJ_mol = -92.0\nsource = \" \"", "missing_key", "source = \" \"",
-                 "source is empty"},
-        FaultRow{"provenance", "provenance = \"from memory\"", "provenance = \"from memori\"", "unknown_value",
-                 "from memori", "did you mean \"from memory\"?"},
-        FaultRow{"unknown_key", "sigma = 0.1", "sigam = 0.1", "unknown_key", "sigam", "did you mean \"sigma\"?"},
-        FaultRow{"wrong_type", "lg_K = 12.0", "lg_K = \"12\"", "wrong_type", "lg_K = \"12\"", "expected a number"},
+                 "lg_K = 12.0\nsigma = 0.1\ndH_kJ_mol = -92.0\nsource = \" \"", "missing_key",
+                 "source = \" \"", "source is empty"},
+        FaultRow{"provenance", "provenance = \"from memory\"", "provenance = \"from memori\"",
+                 "unknown_value", "from memori", "did you mean \"from memory\"?"},
+        FaultRow{"unknown_key", "sigma = 0.1", "sigam = 0.1", "unknown_key", "sigam",
+                 "did you mean \"sigma\"?"},
+        FaultRow{"wrong_type", "lg_K = 12.0", "lg_K = \"12\"", "wrong_type", "lg_K = \"12\"",
+                 "expected a number"},
         FaultRow{"not_finite", "lg_K = 12.0", "lg_K = nan", "not_a_number", "lg_K = nan", "finite"},
         FaultRow{"negative_sigma", "sigma = 0.1", "sigma = -0.1", "out_of_range", "sigma = -0.1", "-0.1"},
-        FaultRow{"medium", "medium = \"Na^+|Cl^-\"", "medium = \"NaCl\"", "bad_medium", "NaCl", "cation|anion"},
-        FaultRow{"divalent_medium", "medium = \"Na^+|Cl^-\"", "medium = \"Na^+|SO4^2-\"", "bad_medium", "medium =",
-                 "1:1"},
+        FaultRow{"medium", "medium = \"Na^+|Cl^-\"", "medium = \"NaCl\"", "bad_medium", "NaCl",
+                 "cation|anion"},
+        FaultRow{"divalent_medium", "medium = \"Na^+|Cl^-\"", "medium = \"Na^+|SO4^2-\"", "bad_medium",
+                 "medium =", "1:1"},
         FaultRow{"hydroxide_row", "formula = \"CuOH^+\"\nfrom = { \"Cu^2+\" = 1, \"H2O\" = 1, \"H^+\" = -1 }",
-                 "formula = \"OH^-\"\nfrom = { \"H2O\" = 1, \"H^+\" = -1 }", "reserved_species", "formula = \"OH^-\"",
-                 "only a recipe"},
-        FaultRow{"bad_formula", "formula = \"CuOH^+\"", "formula = \"CuOH+\"", "bad_formula", "CuOH+", "CuOH+"},
-        FaultRow{"no_molar_mass", "molar_mass = 97.561\n", "", "missing_key", "[[solid]]", "molar_mass is missing"},
-        FaultRow{"no_lg_K", "lg_K = 12.0\n", "", "missing_key", "[[species]]\nformula = \"Cu(NH3)4^2+\"", "lg_K"},
+                 "formula = \"OH^-\"\nfrom = { \"H2O\" = 1, \"H^+\" = -1 }", "reserved_species",
+                 "formula = \"OH^-\"", "only a recipe"},
+        FaultRow{"bad_formula", "formula = \"CuOH^+\"", "formula = \"CuOH+\"", "bad_formula", "CuOH+",
+                 "CuOH+"},
+        FaultRow{"no_molar_mass", "molar_mass = 97.561\n", "", "missing_key", "[[solid]]",
+                 "molar_mass is missing"},
+        FaultRow{"no_lg_K", "lg_K = 12.0\n", "", "missing_key", "[[species]]\nformula = \"Cu(NH3)4^2+\"",
+                 "lg_K"},
         FaultRow{"gas", "of = \"NH3\"", "of = \"CN^-\"", "charge_unbalanced", "of = \"CN^-\"", "NH3"},
         FaultRow{"pair", "[\"NH4^+\", \"SO4^2-\"]", "[\"NH4^+\"]", "wrong_type", "[\"NH4^+\"]", "two"},
         FaultRow{"misspelled_word", "\"citrate^3-\" = 1 }", "\"citarte^3-\" = 1 }", "unknown_component",

@@ -19,7 +19,8 @@ class Folder {
   Folder() {
     static std::atomic<int> count{0};
     const auto* info = testing::UnitTest::GetInstance()->current_test_info();
-    std::string name = std::string(info->test_suite_name()) + "." + info->name() + "." + std::to_string(++count);
+    std::string name =
+        std::string(info->test_suite_name()) + "." + info->name() + "." + std::to_string(++count);
     std::replace(name.begin(), name.end(), '/', '_');
     m_path = std::filesystem::path(TW_BINARY_DIR) / "test-files" / name;
     std::filesystem::remove_all(m_path);

@@ -113,7 +113,8 @@ provenance = "from memory"
   EXPECT_EQ(speciesOf(recipe).size(), 3u);
   EXPECT_EQ(species(recipe, "CuOH^+").formation.K.lgK, 6.5);
   EXPECT_EQ(species(recipe, "CuOH^+").formation.hydroxide, 1.0);
-  const auto row = std::find_if(recipe.rows.begin(), recipe.rows.end(), [](const auto& r) { return r.name == "CuOH^+"; });
+  const auto row =
+      std::find_if(recipe.rows.begin(), recipe.rows.end(), [](const auto& r) { return r.name == "CuOH^+"; });
   EXPECT_NE(row->where.find("r.toml:"), std::string::npos);
 }
 
@@ -178,9 +179,10 @@ TEST_F(RecipeFile, ReadsChannelsGuardsRatiosAndStocks) {
 }
 
 TEST_F(RecipeFile, QuotesCausticAsHydroxideUnlessToldOtherwise) {
-  const std::string caustic = with(with(kRecipe, "set_by = \"ph\"\nchannel = \"ph\"",
-                                        "set_by = \"hydroxide\"\nchannel = \"caustic\"\nper_metal = { \"Cu^2+\" = 2 }"),
-                                   "[[ratio]]", R"([[channel]]
+  const std::string caustic =
+      with(with(kRecipe, "set_by = \"ph\"\nchannel = \"ph\"",
+                "set_by = \"hydroxide\"\nchannel = \"caustic\"\nper_metal = { \"Cu^2+\" = 2 }"),
+           "[[ratio]]", R"([[channel]]
 id = "caustic"
 unit = "g/L"
 low = 50
@@ -195,7 +197,8 @@ plausible = [0, 200]
   ASSERT_EQ(proton.perMetal.size(), 1u);
   EXPECT_EQ(proton.perMetal[0].component, plain.system.metal);
   EXPECT_EQ(proton.perMetal[0].nu, 2.0);
-  const Recipe soda = load(with(caustic, "plausible = [0, 200]", "plausible = [0, 200]\nas_formula_mass = 39.997"));
+  const Recipe soda =
+      load(with(caustic, "plausible = [0, 200]", "plausible = [0, 200]\nas_formula_mass = 39.997"));
   EXPECT_NEAR(*toCanonical(*soda.channel("caustic"), 39.997), 1.0, 1e-12);
 }
 
@@ -216,7 +219,8 @@ limits = { ph_up = { caution = 0.3, act = 0.15 }, lg_saturation = { caution = -0
 }
 
 TEST_F(RecipeFile, ReadsSitAsAnyOtherActivityModel) {
-  const Recipe recipe = load(with(kRecipe, "\"davies\"", "\"sit\"\nwater_activity = true\nwater_kg_L = 0.95"));
+  const Recipe recipe =
+      load(with(kRecipe, "\"davies\"", "\"sit\"\nwater_activity = true\nwater_kg_L = 0.95"));
   EXPECT_EQ(recipe.system.activityModel, model::ActivityModel::Sit);
   EXPECT_TRUE(recipe.system.waterActivity);
   EXPECT_EQ(recipe.system.water_kg_L, 0.95);

@@ -14,7 +14,8 @@ namespace {
 
 std::vector<std::filesystem::path> shipped() {
   std::vector<std::filesystem::path> files;
-  for (const auto& entry : std::filesystem::directory_iterator(std::filesystem::path(TW_SOURCE_DIR) / "baths")) {
+  for (const auto& entry :
+       std::filesystem::directory_iterator(std::filesystem::path(TW_SOURCE_DIR) / "baths")) {
     if (entry.path().extension() == ".toml") files.push_back(entry.path());
   }
   std::sort(files.begin(), files.end());
@@ -48,7 +49,8 @@ TEST(ShippedFiles, WorksheetsGiveTheTargetFromSomeTitre) {
     for (const Channel& channel : recipe->channels) {
       if (!channel.worksheet) continue;
       const auto& inputs = channel.worksheet->inputs;
-      const auto burette = std::find_if(inputs.begin(), inputs.end(), [](const auto& i) { return !i.defaultValue; });
+      const auto burette =
+          std::find_if(inputs.begin(), inputs.end(), [](const auto& i) { return !i.defaultValue; });
       ASSERT_NE(burette, inputs.end()) << file << channel.id;
       double least = 1e300, most = -1e300;
       for (int step = 0; step <= 20; ++step) {

@@ -164,7 +164,8 @@ TEST_F(ShopFile, ATankChangesItsRecipeById) {
 }
 
 TEST_F(ShopFile, OverridesMayBeTablesNamedById) {
-  const std::string text = with(kShop, "[[line.tank.channel]]\nid = \"copper\"", "[line.tank.channel.copper]");
+  const std::string text =
+      with(kShop, "[[line.tank.channel]]\nid = \"copper\"", "[line.tank.channel.copper]");
   const auto shop = loadShop(write(text));
   ASSERT_TRUE(shop) << shown(shop.error());
   EXPECT_EQ(shop->tank("L2-T4")->channels.at("copper").target, 23.0);
@@ -211,7 +212,8 @@ TEST_P(BadShop, NamesFileLineValueAndExpectation) {
   const std::string where = file.string() + ":" + std::to_string(lineOf(text, row.near));
   bool found = false;
   for (const auto& fault : faults) {
-    found = found || (fault.code == row.code && fault.where == where && fault.detail.find(row.says) != std::string::npos);
+    found = found || (fault.code == row.code && fault.where == where &&
+                      fault.detail.find(row.says) != std::string::npos);
   }
   EXPECT_TRUE(found) << "expected " << where << " [" << row.code << "] " << row.says << "\n" << shown(faults);
 }
@@ -226,11 +228,11 @@ INSTANTIATE_TEST_SUITE_P(
         FaultRow{"port", ":8484", ":84840", "bad_address", "listen", "84840"},
         FaultRow{"sign_in", "\"none\"", "\"never\"", "unknown_value", "sign_in", "required, none"},
         FaultRow{"folder", "[\"baths\"]", "[\"bath\"]", "cannot_read", "recipes", "\"bath\""},
-        FaultRow{"recipe", "recipe = \"sample-bath\"", "recipe = \"sampel-bath\"", "unknown_recipe", "[[line.tank]]",
-                 "did you mean \"sample-bath\"?"},
+        FaultRow{"recipe", "recipe = \"sample-bath\"", "recipe = \"sampel-bath\"", "unknown_recipe",
+                 "[[line.tank]]", "did you mean \"sample-bath\"?"},
         FaultRow{"color", "#1d4e89", "#1d4e8", "bad_color", "liquor_color", "#rrggbb"},
-        FaultRow{"same_tank", "id = \"L2-T5\"", "id = \"L2-T4\"", "duplicate", "[[line.tank]]\nid = \"L2-T4\"\nrecipe",
-                 "twice"},
+        FaultRow{"same_tank", "id = \"L2-T5\"", "id = \"L2-T4\"", "duplicate",
+                 "[[line.tank]]\nid = \"L2-T4\"\nrecipe", "twice"},
         FaultRow{"limit_order", "caution = 0.8, act = 0.4", "caution = 0.4, act = 0.8", "bad_limit", "ph_up",
                  "act is 0.8"},
         FaultRow{"override_channel", "id = \"copper\"", "id = \"coper\"", "unknown_channel", "[[line.tank]]",
@@ -241,14 +243,21 @@ INSTANTIATE_TEST_SUITE_P(
         FaultRow{"baud", "baud = 19200", "baud = 12345", "unknown_value", "baud", "12345"},
         FaultRow{"data_bits", "data_bits = 7", "data_bits = 9", "unknown_value", "data_bits", "5, 6, 7, 8"},
         FaultRow{"parity", "\"even\"", "\"evn\"", "unknown_value", "parity", "did you mean \"even\"?"},
-        FaultRow{"serial_tank", "tank = \"L2-T4\"", "tank = \"L2-T6\"", "unknown_tank", "tank = \"L2-T6\"", "L2-T4"},
-        FaultRow{"columns", "columns = [\"ph\", \"temperature\"]\n", "", "missing_key", "[[serial]]", "columns"},
-        FaultRow{"pattern", "frame = \"columns\"", "frame = \"pattern\"", "missing_key", "[[serial]]", "named group"},
+        FaultRow{"serial_tank", "tank = \"L2-T4\"", "tank = \"L2-T6\"", "unknown_tank", "tank = \"L2-T6\"",
+                 "L2-T4"},
+        FaultRow{"columns", "columns = [\"ph\", \"temperature\"]\n", "", "missing_key", "[[serial]]",
+                 "columns"},
+        FaultRow{"pattern", "frame = \"columns\"", "frame = \"pattern\"", "missing_key", "[[serial]]",
+                 "named group"},
         FaultRow{"decimal", "decimal = \",\"", "decimal = \";\"", "unknown_value", "decimal", "\";\""},
-        FaultRow{"route_kind", "kind = \"mail\"", "kind = \"maul\"", "unknown_value", "maul", "did you mean \"mail\"?"},
-        FaultRow{"route_key", "url = \"http", "uri = \"http", "missing_key", "[[route]]\nid = \"night\"", "url is missing"},
-        FaultRow{"route_after", "after = \"day\"", "after = \"dya\"", "unknown_route", "after", "did you mean \"day\"?"},
-        FaultRow{"secret", "token_file = \"token\"", "token = \"abc\"", "secret_in_file", "token =", "token_file"},
+        FaultRow{"route_kind", "kind = \"mail\"", "kind = \"maul\"", "unknown_value", "maul",
+                 "did you mean \"mail\"?"},
+        FaultRow{"route_key", "url = \"http", "uri = \"http", "missing_key", "[[route]]\nid = \"night\"",
+                 "url is missing"},
+        FaultRow{"route_after", "after = \"day\"", "after = \"dya\"", "unknown_route", "after",
+                 "did you mean \"day\"?"},
+        FaultRow{"secret", "token_file = \"token\"", "token = \"abc\"", "secret_in_file",
+                 "token =", "token_file"},
         FaultRow{"priority", "\"high\"", "\"urgent\"", "unknown_value", "min_priority", "high, medium, low"}),
     [](const auto& row) { return std::string(row.param.id); });
 

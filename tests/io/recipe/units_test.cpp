@@ -46,7 +46,8 @@ INSTANTIATE_TEST_SUITE_P(
                     ConversionRow{"minute", 90, "min", "h", 0, 1.5},
                     ConversionRow{"milliequivalent", 5, "mEq", "mmol", 0, 5},
                     ConversionRow{"copper_to_moles", 63.546, "g/L", "mol/L", 63.546, 1},
-                    ConversionRow{"copper_ounces", 3, "oz/gal", "mol/L", 63.546, 3 * 28.349523125 / 3.785411784 / 63.546},
+                    ConversionRow{"copper_ounces", 3, "oz/gal", "mol/L", 63.546,
+                                  3 * 28.349523125 / 3.785411784 / 63.546},
                     ConversionRow{"moles_to_grams", 0.5, "mol/L", "mg/L", 17.031, 8515.5},
                     ConversionRow{"same", 0.1, "oz/gal", "oz/gal", 0, 0.1}),
     [](const auto& row) { return std::string(row.param.id); });

@@ -49,7 +49,8 @@ TEST_F(Values, InAnotherKindOfUnitAreRefused) {
 
 TEST_F(Values, FillTheSolversInputInComponentOrder) {
   const Recipe recipe = load(kRecipe);
-  const auto input = liquorInput(recipe, {{"copper", 0.35}, {"ammonia", 5.0}, {"ph", 10.2}, {"temperature", 40.0}});
+  const auto input =
+      liquorInput(recipe, {{"copper", 0.35}, {"ammonia", 5.0}, {"ph", 10.2}, {"temperature", 40.0}});
   ASSERT_TRUE(input);
   EXPECT_EQ(input->temperature_C, 40.0);
   EXPECT_FALSE(input->sampleTemperature_C);
@@ -66,12 +67,13 @@ TEST_F(Values, NameEveryMissingChannel) {
 }
 
 TEST_F(Values, NeededAreTheComponentsChannelsAndTemperature) {
-  EXPECT_EQ(neededChannels(load(kRecipe)), (std::vector<std::string>{"copper", "ammonia", "ph", "temperature"}));
+  EXPECT_EQ(neededChannels(load(kRecipe)),
+            (std::vector<std::string>{"copper", "ammonia", "ph", "temperature"}));
 }
 
 TEST_F(Values, ASampleTemperatureOverridesTheRecipes) {
-  const Recipe recipe =
-      load(with(kRecipe, "volume_L = 900", "volume_L = 900\nph_taken_at = \"sample\"\nsample_temperature_C = 22"));
+  const Recipe recipe = load(
+      with(kRecipe, "volume_L = 900", "volume_L = 900\nph_taken_at = \"sample\"\nsample_temperature_C = 22"));
   EXPECT_TRUE(recipe.system.phTakenAtSample);
   ChannelValues values = targetValues(recipe);
   values.erase("sample_temperature");
@@ -101,7 +103,8 @@ TEST_F(Values, RatiosCompareMolesOrMasses) {
 }
 
 TEST_F(Values, GuardsSeeChannelUnits) {
-  const Recipe recipe = load(with(kRecipe, "by = \"mole\"", "by = \"mole\"\nguard = { act_low = 4, caution_low = 5 }"));
+  const Recipe recipe =
+      load(with(kRecipe, "by = \"mole\"", "by = \"mole\"\nguard = { act_low = 4, caution_low = 5 }"));
   const auto guards = guardValues(recipe, {{"copper", 0.5}, {"ammonia", 4.0}});
   ASSERT_EQ(guards.size(), 2u);
   EXPECT_EQ(guards[0].guard.id, "copper");

@@ -13,7 +13,9 @@ namespace {
 
 using Names = std::map<std::string, Quantity>;
 
-Quantity of(double value, const std::string& unit) { return {toBase(*findUnit(unit), value), findUnit(unit)->dimension}; }
+Quantity of(double value, const std::string& unit) {
+  return {toBase(*findUnit(unit), value), findUnit(unit)->dimension};
+}
 
 struct TitrationRow {
   const char* id;
@@ -39,33 +41,78 @@ TEST_P(Titration, WorksOutAsByHand) {
 INSTANTIATE_TEST_SUITE_P(
     Vogel, Titration,
     testing::Values(
-        TitrationRow{"nickel_edta", "V * c * M / s",
-                     {{"V", of(25.60, "mL")}, {"c", of(0.0998, "mol/L")}, {"M", of(58.693, "g/mol")}, {"s", of(2, "mL")}},
-                     "g/L", 74.98, 0.005},
-        TitrationRow{"nickel_back", "(V1 * c1 - V2 * c2) * M / s",
-                     {{"V1", of(25, "mL")}, {"c1", of(0.1, "mol/L")}, {"V2", of(9.35, "mL")}, {"c2", of(0.1, "mol/L")},
-                      {"M", of(58.693, "g/mol")}, {"s", of(5, "mL")}},
-                     "g/L", 18.37, 0.005},
-        TitrationRow{"copper_pyrophosphate", "V*c*M/s",
-                     {{"V", of(19.72, "mL")}, {"c", of(0.1, "mol/L")}, {"M", of(63.546, "g/mol")}, {"s", of(5, "mL")}},
-                     "g/L", 25.06, 0.005},
-        TitrationRow{"free_cyanide", "V * c * 2 * M_NaCN / s",
-                     {{"V", of(12.40, "mL")}, {"c", of(0.1, "mol/L")}, {"M_NaCN", of(49.008, "g/mol")}, {"s", of(10, "mL")}},
-                     "g/L", 12.15, 0.005},
-        TitrationRow{"silver_volhard", "(V - blank) * c * M / s",
-                     {{"V", of(13.97, "mL")}, {"blank", of(0.05, "mL")}, {"c", of(0.0998, "mol/L")},
-                      {"M", of(107.87, "g/mol")}, {"s", of(5, "mL")}},
-                     "oz/gal", 4.00, 0.005},
-        TitrationRow{"zincate_caustic", "V * c * M / s",
-                     {{"V", of(16.30, "mL")}, {"c", of(1, "mol/L")}, {"M", of(39.997, "g/mol")}, {"s", of(5, "mL")}},
-                     "g/L", 130.4, 0.05},
-        TitrationRow{"diluted_sample", "V * c * M / s * (flask / aliquot)",
-                     {{"V", of(10, "mL")}, {"c", of(0.1, "mol/L")}, {"M", of(63.546, "g/mol")}, {"s", of(10, "mL")},
-                      {"flask", of(100, "mL")}, {"aliquot", of(20, "mL")}},
-                     "g/L", 31.773, 1e-9},
-        TitrationRow{"free_edta", "V * c / s",
-                     {{"V", of(8.44, "mL")}, {"c", of(0.05, "mol/L")}, {"s", of(10, "mL")}}, "mmol/L", 42.2, 0.05},
-        TitrationRow{"millimoles", "n / s", {{"n", of(6.311, "mmol")}, {"s", of(1, "mL")}}, "mol/L", 6.311, 1e-12}),
+        TitrationRow{"nickel_edta",
+                     "V * c * M / s",
+                     {{"V", of(25.60, "mL")},
+                      {"c", of(0.0998, "mol/L")},
+                      {"M", of(58.693, "g/mol")},
+                      {"s", of(2, "mL")}},
+                     "g/L",
+                     74.98,
+                     0.005},
+        TitrationRow{"nickel_back",
+                     "(V1 * c1 - V2 * c2) * M / s",
+                     {{"V1", of(25, "mL")},
+                      {"c1", of(0.1, "mol/L")},
+                      {"V2", of(9.35, "mL")},
+                      {"c2", of(0.1, "mol/L")},
+                      {"M", of(58.693, "g/mol")},
+                      {"s", of(5, "mL")}},
+                     "g/L",
+                     18.37,
+                     0.005},
+        TitrationRow{
+            "copper_pyrophosphate",
+            "V*c*M/s",
+            {{"V", of(19.72, "mL")}, {"c", of(0.1, "mol/L")}, {"M", of(63.546, "g/mol")}, {"s", of(5, "mL")}},
+            "g/L",
+            25.06,
+            0.005},
+        TitrationRow{"free_cyanide",
+                     "V * c * 2 * M_NaCN / s",
+                     {{"V", of(12.40, "mL")},
+                      {"c", of(0.1, "mol/L")},
+                      {"M_NaCN", of(49.008, "g/mol")},
+                      {"s", of(10, "mL")}},
+                     "g/L",
+                     12.15,
+                     0.005},
+        TitrationRow{"silver_volhard",
+                     "(V - blank) * c * M / s",
+                     {{"V", of(13.97, "mL")},
+                      {"blank", of(0.05, "mL")},
+                      {"c", of(0.0998, "mol/L")},
+                      {"M", of(107.87, "g/mol")},
+                      {"s", of(5, "mL")}},
+                     "oz/gal",
+                     4.00,
+                     0.005},
+        TitrationRow{
+            "zincate_caustic",
+            "V * c * M / s",
+            {{"V", of(16.30, "mL")}, {"c", of(1, "mol/L")}, {"M", of(39.997, "g/mol")}, {"s", of(5, "mL")}},
+            "g/L",
+            130.4,
+            0.05},
+        TitrationRow{"diluted_sample",
+                     "V * c * M / s * (flask / aliquot)",
+                     {{"V", of(10, "mL")},
+                      {"c", of(0.1, "mol/L")},
+                      {"M", of(63.546, "g/mol")},
+                      {"s", of(10, "mL")},
+                      {"flask", of(100, "mL")},
+                      {"aliquot", of(20, "mL")}},
+                     "g/L",
+                     31.773,
+                     1e-9},
+        TitrationRow{"free_edta",
+                     "V * c / s",
+                     {{"V", of(8.44, "mL")}, {"c", of(0.05, "mol/L")}, {"s", of(10, "mL")}},
+                     "mmol/L",
+                     42.2,
+                     0.05},
+        TitrationRow{
+            "millimoles", "n / s", {{"n", of(6.311, "mmol")}, {"s", of(1, "mL")}}, "mol/L", 6.311, 1e-12}),
     [](const auto& row) { return std::string(row.param.id); });
 
 double number(const std::string& expression, const Names& names = {}) {
@@ -85,7 +132,8 @@ TEST(Expression, FollowsTheUsualOrder) {
 }
 
 TEST(Expression, ReadsTheLongestNameItKnows) {
-  const Names names = {{"free", {10, {}}}, {"cyanide", {3, {}}}, {"free-cyanide", {1, {}}}, {"free2", {5, {}}}};
+  const Names names = {
+      {"free", {10, {}}}, {"cyanide", {3, {}}}, {"free-cyanide", {1, {}}}, {"free2", {5, {}}}};
   EXPECT_EQ(number("free-cyanide", names), 1.0);
   EXPECT_EQ(number("free - cyanide", names), 7.0);
   EXPECT_EQ(number("free2", names), 5.0);
@@ -138,14 +186,16 @@ TEST_F(SheetOfARecipe, GivesTheChannelInItsCanonicalUnit) {
   const auto value = evaluateWorksheet(m_recipe, *m_recipe.channel("copper"), {{"V", 19.72}});
   ASSERT_TRUE(value) << value.error().detail;
   EXPECT_NEAR(*value, 0.986, 1e-12);
-  const auto blanked = evaluateWorksheet(m_recipe, *m_recipe.channel("copper"), {{"V", 19.72}, {"blank", 0.72}});
+  const auto blanked =
+      evaluateWorksheet(m_recipe, *m_recipe.channel("copper"), {{"V", 19.72}, {"blank", 0.72}});
   EXPECT_NEAR(*blanked, 0.95, 1e-12);
 }
 
 TEST_F(SheetOfARecipe, LetsAnotherChannelFlowIn) {
   // Back titration as in Vogel (from memory), by hand: 50.00 * 0.2 - 18.40 * 0.2005 = 6.3108 mmol in 1 mL,
   // less four for each mole of copper.
-  const auto value = evaluateWorksheet(m_recipe, *m_recipe.channel("ammonia"), {{"V", 18.40}}, {{"copper", 0.35}});
+  const auto value =
+      evaluateWorksheet(m_recipe, *m_recipe.channel("ammonia"), {{"V", 18.40}}, {{"copper", 0.35}});
   ASSERT_TRUE(value) << value.error().detail;
   EXPECT_NEAR(*value, 6.3108 - 1.4, 1e-12);
 }

@@ -135,8 +135,8 @@ TEST(ApiJson, KeepsEveryMemberOnTheWay) {
 
 TEST(ApiJson, NamesFieldsInSnakeCase) {
   const json tank = sampleTank();
-  for (const char* key : {"line_id", "liquor_color", "volume_L", "horizon_h", "sampled_at", "pM", "temperature_C",
-                          "unreliable_because", "in_service"}) {
+  for (const char* key : {"line_id", "liquor_color", "volume_L", "horizon_h", "sampled_at", "pM",
+                          "temperature_C", "unreliable_because", "in_service"}) {
     EXPECT_TRUE(tank.contains(key)) << key;
   }
   EXPECT_TRUE(tank["channels"][0].contains("max_age_h"));

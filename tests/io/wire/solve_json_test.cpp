@@ -11,9 +11,9 @@
 namespace tw::io::wire {
 namespace {
 
-using nlohmann::ordered_json;
 using model::Margin;
 using model::MarginKind;
+using nlohmann::ordered_json;
 
 Recipe sampleRecipe() {
   Recipe recipe;
@@ -42,13 +42,16 @@ model::LiquorReport sampleReport() {
   report.species = {{"Cu(NH3)4^2+", 2, 0.33, -0.7, -1.2}, {"CuCl^+", 1, 0.0, std::nullopt, std::nullopt}};
   report.solids = {{"Cu(OH)2 fresh", model::SolidRole::Sludge, -2.1, 0.0},
                    {"CuO aged", model::SolidRole::Aged, std::nullopt, 0.25}};
-  const auto set = [&](MarginKind kind) -> model::MarginSet& { return report.margins[static_cast<std::size_t>(kind)]; };
+  const auto set = [&](MarginKind kind) -> model::MarginSet& {
+    return report.margins[static_cast<std::size_t>(kind)];
+  };
   set(MarginKind::PhUp).smallest = marginOf(1.3, {});
   set(MarginKind::PhUp).bySolid = {{"Cu(OH)2 fresh", marginOf(1.3, {})}};
   set(MarginKind::LigandLoss).smallest = marginOf(3.1, 0.52, "NH3");
   set(MarginKind::LigandLoss).byLigand = {{"NH3", marginOf(3.1, 0.52, "NH3")}, {"en", std::nullopt}};
   set(MarginKind::MetalGain).smallest = marginOf(0.9, 2.6);
-  set(MarginKind::MetalGain).bySolid = {{"Cu(OH)2 fresh", marginOf(0.9, 2.6)}, {"Zn(OH)2 fresh", std::nullopt}};
+  set(MarginKind::MetalGain).bySolid = {{"Cu(OH)2 fresh", marginOf(0.9, 2.6)},
+                                        {"Zn(OH)2 fresh", std::nullopt}};
   report.secondMetals = {{"Zn^2+", 9.1, 1e-10, std::nullopt}, {"Ni^2+", 8.0, 1e-9, marginOf(0.2, 4.0)}};
   report.warnings = {"no_sigma:CuOH^+"};
   report.noEnthalpy = {"CuOH^+"};
@@ -71,11 +74,34 @@ std::vector<std::string> keysOf(const ordered_json& object) {
 using Keys = std::vector<std::string>;
 
 TEST(SolveJson, HasEveryKeyOfTheContractInItsOrder) {
-  EXPECT_EQ(keysOf(sample()),
-            (Keys{"recipe", "recipe_sha256", "resolved_sha256", "activity_model", "temperature_C", "ph", "ph_measured",
-                  "ph_measured_at_C", "ionic_strength_mol_L", "water_activity", "pM", "lg_activity_metal",
-                  "free_metal_mol_L", "free_ligands_mol_L", "sigma", "totals_mol_L", "species", "solids", "margins",
-                  "sludge", "metals", "gases", "condition", "doubtful", "warnings", "no_enthalpy", "reliable", "solver"}));
+  EXPECT_EQ(keysOf(sample()), (Keys{"recipe",
+                                    "recipe_sha256",
+                                    "resolved_sha256",
+                                    "activity_model",
+                                    "temperature_C",
+                                    "ph",
+                                    "ph_measured",
+                                    "ph_measured_at_C",
+                                    "ionic_strength_mol_L",
+                                    "water_activity",
+                                    "pM",
+                                    "lg_activity_metal",
+                                    "free_metal_mol_L",
+                                    "free_ligands_mol_L",
+                                    "sigma",
+                                    "totals_mol_L",
+                                    "species",
+                                    "solids",
+                                    "margins",
+                                    "sludge",
+                                    "metals",
+                                    "gases",
+                                    "condition",
+                                    "doubtful",
+                                    "warnings",
+                                    "no_enthalpy",
+                                    "reliable",
+                                    "solver"}));
 }
 
 TEST(SolveJson, HasEveryKeyInsideItsParts) {
@@ -86,7 +112,8 @@ TEST(SolveJson, HasEveryKeyInsideItsParts) {
   EXPECT_EQ(keysOf(margins),
             (Keys{"ph_up", "ph_down", "ligand_loss", "metal_gain", "warming", "cooling", "dilution"}));
   EXPECT_EQ(keysOf(margins["ph_up"]), (Keys{"value", "solid", "sigma"}));
-  EXPECT_EQ(keysOf(margins["ligand_loss"]), (Keys{"ligand", "mol_L", "fraction", "solid", "sigma", "by_ligand"}));
+  EXPECT_EQ(keysOf(margins["ligand_loss"]),
+            (Keys{"ligand", "mol_L", "fraction", "solid", "sigma", "by_ligand"}));
   EXPECT_EQ(keysOf(margins["ligand_loss"]["by_ligand"]["NH3"]), (Keys{"mol_L", "fraction", "solid"}));
   EXPECT_EQ(keysOf(margins["metal_gain"]), (Keys{"mol_L", "fraction", "solid", "sigma", "by_solid"}));
   EXPECT_EQ(keysOf(json["metals"]["Zn^2+"]), (Keys{"pM", "free_mol_L", "metal_gain"}));

@@ -34,12 +34,13 @@ std::vector<model::SweepPoint> samplePoints() {
 }
 
 TEST(SweepCsv, HasTheColumnsOfTheContractAndEmptyCellsWhereThereIsNothing) {
-  EXPECT_EQ(sweepCsv(sampleSystem(), samplePoints()),
-            "x,ph,pM,lg_saturation:Cu(OH)2 fresh,\"lg_saturation:odd, \"\"quoted\"\"\",share:Cu^2+,share:CuOH^+,"
-            "share:Cu(NH3)4^2+\n"
-            "9,10.25,14.5,-2,,0.30000000000000004,0.5,\n"
-            "9.5,,,,,,,\n"
-            "1e-07,10.25,14.5,-2,,,,0.75\n");
+  EXPECT_EQ(
+      sweepCsv(sampleSystem(), samplePoints()),
+      "x,ph,pM,lg_saturation:Cu(OH)2 fresh,\"lg_saturation:odd, \"\"quoted\"\"\",share:Cu^2+,share:CuOH^+,"
+      "share:Cu(NH3)4^2+\n"
+      "9,10.25,14.5,-2,,0.30000000000000004,0.5,\n"
+      "9.5,,,,,,,\n"
+      "1e-07,10.25,14.5,-2,,,,0.75\n");
 }
 
 TEST(SweepJson, SaysTheSame) {
