@@ -51,7 +51,8 @@ class Balances {
   /// Concentrations and residuals at (x, I).
   void evaluate();
   /// Damped Newton from (x, I); true when every residual is accepted. `withI`: I is one more unknown.
-  bool iterate(bool withI, int largestCount);
+  /// `aim`: the relative residual to stop at; a looser one than kAccepted is accepted too.
+  bool iterate(bool withI, int largestCount, double aim = kAimedAt);
   /// One round of one-at-a-time corrections at fixed I, cheap and safe far from the solution.
   void sweep();
   /// Follows a path of residuals down to zero at fixed I (Eq. 20); slower and surer than `iterate`.

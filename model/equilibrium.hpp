@@ -83,8 +83,8 @@ class Equilibrium {
   [[nodiscard]] bool jointFrom(bool warm, const Estimate& estimate);
   [[nodiscard]] bool jointSolved(bool warm, const Estimate& estimate);
   [[nodiscard]] bool firstBranch(bool thorough);
-  [[nodiscard]] bool solveFixed(double I);
-  [[nodiscard]] bool solveFixedHere(double I);
+  [[nodiscard]] bool solveFixed(double I, double aim = Balances::kAimedAt);
+  [[nodiscard]] bool solveFixedHere(double I, double aim = Balances::kAimedAt);
   [[nodiscard]] SolveStatus walkUp();
   [[nodiscard]] bool closeIn(double lnLow, double lnHigh);
   [[nodiscard]] bool sideFits() const;

@@ -16,12 +16,12 @@ constexpr int kFixedCount = 40;   // Newton steps at fixed I before the path is 
 constexpr int kPathCount = 400;
 }  // namespace
 
-bool Equilibrium::solveFixedHere(double I) {
+bool Equilibrium::solveFixedHere(double I, double aim) {
   m_balances.I = I;
-  if (m_balances.iterate(false, kFixedCount)) return true;
+  if (m_balances.iterate(false, kFixedCount, aim)) return true;
   coldStart();
   m_balances.I = I;
-  if (m_balances.iterate(false, kFixedCount)) return true;
+  if (m_balances.iterate(false, kFixedCount, aim)) return true;
   coldStart();
   m_balances.I = I;
   if (m_balances.follow(kPathCount)) return true;
@@ -31,8 +31,8 @@ bool Equilibrium::solveFixedHere(double I) {
 }
 
 /// At fixed I with whichever ion closes the charge there; keeps x in m_lnA.
-bool Equilibrium::solveFixed(double I) {
-  bool solved = solveFixedHere(I);
+bool Equilibrium::solveFixed(double I, double aim) {
+  bool solved = solveFixedHere(I, aim);
   if (canSwitch() && (!solved || !sideFits())) {
     keepX();
     setUp(!m_byOther);
@@ -42,7 +42,7 @@ bool Equilibrium::solveFixed(double I) {
         m_balances.x[k] = m_lnA[m_unknown[k]];
       }
     }
-    solved = solveFixedHere(I);
+    solved = solveFixedHere(I, aim);
   }
   return solved;
 }
@@ -52,13 +52,14 @@ bool Equilibrium::solveFixed(double I) {
 bool Equilibrium::firstBranch(bool thorough) {
   if (!(m_balances.branchSlope() < 0.0)) return false;
   if (!thorough) return true;
+  constexpr double kSignOnly = 1e-3;  // of a residual: enough to tell which side of I the species are on
   constexpr double kStations[] = {0.85, 0.6, 0.35, 0.15, 0.04, 0.005};
   const double I = m_balances.I;
   const bool side = m_byOther;
   m_savedX.assign(m_balances.x.begin(), m_balances.x.end());
   bool first = true;
   for (const double share : kStations) {
-    if (!solveFixed(I * share) || m_balances.speciesIonicStrength() <= I * share) {
+    if (!solveFixed(I * share, kSignOnly) || m_balances.speciesIonicStrength() <= I * share) {
       first = false;
       break;
     }

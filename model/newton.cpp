@@ -14,7 +14,7 @@ constexpr double kLargestStepLnI = 1.5;  // the model bends quickly in I
 constexpr double kSufficient = 1e-4;     // Armijo's share; Nocedal & Wright, Numerical Optimization, ch. 3
 constexpr double kSmallestLambda = 1e-8;
 constexpr double kWildI = 4.0 * kLargestIonicStrength;
-constexpr double kNoPivot = 1e-12;        // rows of the Jacobian are of order 1
+constexpr double kNoPivot = 1e-12;  // rows of the Jacobian are of order 1
 constexpr double kTrace = 1e-12;
 constexpr int kPolish = 50;
 }  // namespace
@@ -64,7 +64,8 @@ bool Balances::lineSearch(bool withI, double meritNow, double worstNow) {
   for (double lambda = 1.0; lambda >= kSmallestLambda; lambda *= 0.5) {
     moveTo(lambda, withI);
     const double trial = merit(withI);
-    if (std::isfinite(trial) && trial <= (1.0 - 2.0 * kSufficient * lambda * m_stepScale) * meritNow) return true;
+    if (std::isfinite(trial) && trial <= (1.0 - 2.0 * kSufficient * lambda * m_stepScale) * meritNow)
+      return true;
     // Within rounding of the solution the merit is noise: take the better point and stop there.
     if (worstNow <= kAccepted) break;
     if (worstResidual(withI) <= kAccepted) return true;
@@ -75,18 +76,19 @@ bool Balances::lineSearch(bool withI, double meritNow, double worstNow) {
   return false;
 }
 
-bool Balances::iterate(bool withI, int largestCount) {
+bool Balances::iterate(bool withI, int largestCount, double aim) {
+  const double accepted = std::max(aim, kAccepted);
   evaluate();
   for (int count = 0; count < largestCount; ++count) {
     const double worst = worstResidual(withI);
     const double now = merit(withI);
     if (!std::isfinite(now)) return false;
-    if (worst <= kAimedAt) return true;
-    if (!solveStep(withI)) return worst <= kAccepted;
+    if (worst <= aim) return true;
+    if (!solveStep(withI)) return worst <= accepted;
     ++m_iterations;
-    if (!lineSearch(withI, now, worst)) return worst <= kAccepted;
+    if (!lineSearch(withI, now, worst)) return worst <= accepted;
   }
-  return worstResidual(withI) <= kAccepted;
+  return worstResidual(withI) <= accepted;
 }
 
 bool Balances::correct() {
