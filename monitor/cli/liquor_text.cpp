@@ -38,7 +38,8 @@ void marginLine(Page out, const io::Recipe& recipe, const model::LiquorReport& r
     return;
   }
   const std::string ligand = margin->ligand.empty() ? "" : " of " + margin->ligand;
-  fmt::format_to(out, "  {:<20} {:.3g} {}{}", words.label, margin->value, words.unit, ligand);
+  const char* gap = *words.unit == '\0' ? "" : " ";
+  fmt::format_to(out, "  {:<20} {:.3g}{}{}{}", words.label, margin->value, gap, words.unit, ligand);
   if (margin->fraction) fmt::format_to(out, " ({:.0f} % of the total)", *margin->fraction * 100.0);
   fmt::format_to(out, ", then {}", margin->solid);
   if (const auto& limit = recipe.limits[index]) {
