@@ -35,8 +35,8 @@ std::optional<model::Fault> judge(Database& db, int current) {
   if (!ours) return unfit(db, "store_open", "this file is a database of another program");
   if (version > current) {
     return unfit(db, "store_newer",
-                 "the store is of version " + std::to_string(version) + ", made by a later program; this one reads up to " +
-                     std::to_string(current));
+                 "the store is of version " + std::to_string(version) +
+                     ", made by a later program; this one reads up to " + std::to_string(current));
   }
   return std::nullopt;
 }
@@ -71,7 +71,8 @@ model::Result<model::Done> checkVersion(Database& db, const std::vector<std::str
   if (const int version = db.userVersion(); version < current) {
     return model::fail(unfit(db, "store_open",
                              "the store is of version " + std::to_string(version) + " and this program reads " +
-                                 std::to_string(current) + ": start the service once, it brings the store up to date"));
+                                 std::to_string(current) +
+                                 ": start the service once, it brings the store up to date"));
   }
   return db.finish(model::Done{});
 }

@@ -61,6 +61,10 @@ std::optional<model::Fault> invalid(const NewReading& reading) {
                     why + " (tank '" + reading.tank + "', entered '" + reading.entered + "')");
 }
 
+bool usable(const NewReading& reading) {
+  return reading.state == ReadingState::Accepted || reading.state == ReadingState::Suspicious;
+}
+
 Known known(Database& db, const NewReading& reading) {
   Statement row = db.use("look for the same reading",
                          "SELECT r.id, r.value, r.entered, r.state,"
@@ -69,16 +73,17 @@ Known known(Database& db, const NewReading& reading) {
                          " ORDER BY r.id");
   row.bind(reading.tank, reading.sampledAt.at, reading.channel);
   Known found;
+  bool onlyDeclared = true;  // nothing here but rows that came as superseded, from an export
   while (row.next()) {
     const std::int64_t id = row.integer(0);
     const auto value = row.maybeReal(1);
     const bool refused = row.text(3) == name(ReadingState::Refused);
     const bool current = !row.boolean(4);
     const bool accepted = row.text(3) == name(ReadingState::Accepted);
+    onlyDeclared = onlyDeclared && row.text(3) == name(ReadingState::Superseded);
     const bool same = reading.value ? value && sameValue(*value, *reading.value)
                                     : !value && row.text(2) == reading.entered;
-    const bool better = reading.state == ReadingState::Accepted || reading.state == ReadingState::Suspicious;
-    if (same && refused && better) {
+    if (same && refused && usable(reading)) {
       if (current) found.sameRefused = id;
     } else if (same && (!found.same || (current && accepted))) {
       found.same = id;
@@ -86,6 +91,9 @@ Known known(Database& db, const NewReading& reading) {
       found.rival = id;
     }
   }
+  // A suspicious reading and its confirmation have the same value: after the first has been read back,
+  // the second is still missing.
+  if (onlyDeclared && reading.state != ReadingState::Superseded) found.same.reset();
   return found;
 }
 
@@ -106,8 +114,7 @@ model::Result<std::vector<Added>> SqliteStore::addReadings(const std::vector<New
 Added SqliteStore::addReading(const NewReading& reading) {
   const Known found = known(m_db, reading);
   if (found.same) return {AddOutcome::Duplicate, *found.same};
-  const bool usable = reading.state == ReadingState::Accepted || reading.state == ReadingState::Suspicious;
-  if (usable && reading.value && found.rival) {
+  if (usable(reading) && found.rival) {
     const std::string conflict = "another value than reading " + std::to_string(*found.rival);
     const std::string reason = reading.reason.empty() ? conflict : reading.reason + "; " + conflict;
     return {AddOutcome::Conflict, insertReading(reading, ReadingState::Suspicious, reason, std::nullopt)};

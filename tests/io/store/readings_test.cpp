@@ -228,6 +228,27 @@ TEST_P(Readings, WhoConfirmsAConflictDecidesIt) {
   EXPECT_EQ(must(store().reading(other.id))->state, ReadingState::Superseded);
 }
 
+// What an export wrote of a suspicious reading and its confirmation, read into another store.
+TEST_P(Readings, AConfirmationReadBackFromAnExportIsNotTakenForWhatItConfirms) {
+  const Added before = add(make("copper", minute(0), 1.0, ReadingState::Superseded));
+  EXPECT_EQ(before.outcome, AddOutcome::Stored);
+  EXPECT_THAT(must(store().newestAccepted("T1", minute(0))), IsEmpty());
+  EXPECT_THAT(must(store().pendingLiquors(0)), IsEmpty());
+  const Added confirmed = add(make("copper", minute(0), 1.0));
+  EXPECT_EQ(confirmed.outcome, AddOutcome::Stored);
+  EXPECT_EQ(must(store().newestAccepted("T1", minute(0))).at("copper").id, confirmed.id);
+  // Read back once more, both are known.
+  EXPECT_EQ(add(make("copper", minute(0), 1.0, ReadingState::Superseded)).outcome, AddOutcome::Duplicate);
+  EXPECT_EQ(add(make("copper", minute(0), 1.0)).id, confirmed.id);
+}
+
+TEST_P(Readings, ASupersededRowReadBackNeitherConflictsNorComesToLife) {
+  add(make("copper", minute(0), 0.346));
+  EXPECT_EQ(add(make("copper", minute(0), 3.46, ReadingState::Superseded)).outcome, AddOutcome::Stored);
+  EXPECT_EQ(add(make("copper", minute(0), 3.46)).outcome, AddOutcome::Duplicate);
+  EXPECT_EQ(must(store().newestAccepted("T1", minute(0))).at("copper").value, 0.346);
+}
+
 TEST_P(Readings, NewestAcceptedLooksBackFromAnyInstant) {
   add(make("copper", minute(0), 1.0));
   add(make("copper", minute(10), 2.0));

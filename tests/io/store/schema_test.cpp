@@ -69,14 +69,16 @@ TEST(Schema, HistoryCannotBeRewritten) {
   must(store->setRecipeInForce({"T1", "r", "aa", minute(0), "shop", ""}));
   must(store->saveAlarm({}, minute(0), "", "raised"));
   const auto db = rawDatabase(folder.path());
-  db->execute("test", "INSERT INTO settings (tank, key, since, value, person, reason) VALUES ('T1', 'k', 0, '1', '', '')");
+  db->execute("test", "INSERT INTO settings (tank, key, since, value, person, reason)"
+                      " VALUES ('T1', 'k', 0, '1', '', '')");
   ASSERT_FALSE(db->failed());
   for (const std::string table :
        {"reading", "supersession", "event", "result", "result_detail", "result_reading", "result_withdrawn",
         "recipe", "recipe_in_force", "alarm_change", "settings"}) {
     std::string column;
     {
-      db->execute("test", "DROP VIEW IF EXISTS columns_of; CREATE TEMP VIEW columns_of AS SELECT name FROM pragma_table_info('" + table + "')");
+      db->execute("test", "DROP VIEW IF EXISTS columns_of; CREATE TEMP VIEW columns_of AS"
+                          " SELECT name FROM pragma_table_info('" + table + "')");
       auto name = db->use("test", "SELECT name FROM columns_of LIMIT 1");
       ASSERT_TRUE(name.next());
       column = name.text(0);
@@ -84,14 +86,16 @@ TEST(Schema, HistoryCannotBeRewritten) {
     for (const std::string& sql :
          {"UPDATE " + table + " SET " + column + " = " + column, "DELETE FROM " + table,
           "REPLACE INTO " + table + " SELECT * FROM " + table}) {
-      if (table == "result_reading" && sql.starts_with("REPLACE")) continue;  // the row is its key: the same again
+      // There the row is its key: the same again.
+      if (table == "result_reading" && sql.starts_with("REPLACE")) continue;
       db->execute("test", sql);
       const auto fault = db->takeFault();
       ASSERT_TRUE(fault) << sql;
       EXPECT_THAT(fault->detail, testing::HasSubstr("is history")) << sql;
     }
   }
-  for (const char* sql : {"DELETE FROM alarm", "REPLACE INTO alarm SELECT * FROM alarm", "UPDATE alarm SET subject = 'other'"}) {
+  for (const char* sql : {"DELETE FROM alarm", "REPLACE INTO alarm SELECT * FROM alarm",
+                          "UPDATE alarm SET subject = 'other'"}) {
     db->execute("test", sql);
     EXPECT_TRUE(db->takeFault()) << sql;
   }
