@@ -208,7 +208,7 @@ void Board::judge(Place& place) {
     const LiquorPick pick = pickLiquor(setup, facts.readings, now);
     if (!pick.complete()) fresh.clear();
     for (const auto& [channel, canonical] : pick.values()) {
-      fresh[channel] = io::fromCanonical(*setup.recipe.channel(channel), canonical);
+      fresh[channel] = inUnit(*setup.recipe.channel(channel), canonical);
     }
     for (auto& each : observeWindows(setup, fresh)) seen.push_back(std::move(each));
     for (auto& each : observeStale(setup, facts.readings, now)) seen.push_back(std::move(each));

@@ -112,7 +112,7 @@ model::Result<io::ResultRow> solveLiquor(const TankSetup& setup, const LiquorPic
 std::string valuesJson(const io::Recipe& recipe, const io::ChannelValues& values) {
   nlohmann::json json = nlohmann::json::object();
   for (const auto& [id, canonical] : values) {
-    if (const io::Channel* channel = recipe.channel(id)) json[id] = io::fromCanonical(*channel, canonical);
+    if (const io::Channel* channel = recipe.channel(id)) json[id] = inUnit(*channel, canonical);
   }
   for (const io::RatioValue& ratio : io::ratioValues(recipe, values)) json[ratio.ratio->id] = ratio.value;
   return json.dump();

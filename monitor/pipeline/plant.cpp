@@ -1,6 +1,8 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 #include "monitor/pipeline/plant.hpp"
 
+#include <array>
+#include <charconv>
 #include <cmath>
 #include <utility>
 
@@ -38,6 +40,19 @@ Plant::Plant(io::Shop shop, const std::map<std::string, io::Recipe>& recipes) : 
 const TankSetup* Plant::tank(const std::string& id) const {
   const auto at = m_byId.find(id);
   return at == m_byId.end() ? nullptr : at->second;
+}
+
+double inUnit(const io::Channel& channel, double canonical) {
+  constexpr int kDigits = 12;
+  const double x = io::fromCanonical(channel, canonical);
+  if (x == 0.0 || !std::isfinite(x)) return x;
+  // Through text: only a decimal reader gives back the double that is meant.
+  std::array<char, 32> text{};
+  const auto [end, error] =
+      std::to_chars(text.data(), text.data() + text.size(), x, std::chars_format::scientific, kDigits - 1);
+  double rounded = x;
+  if (error == std::errc{}) std::from_chars(text.data(), end, rounded);
+  return rounded;
 }
 
 double uncertainty(const io::Channel& channel, double x) {

@@ -39,6 +39,10 @@ class Plant {
   std::map<std::string, const TankSetup*> m_byId;
 };
 
+/// A canonical value in the channel's own unit, rounded to twelve digits: the way there and back must not
+/// show as 15.400000000000002. Far finer than the 1e-9 within which two values are the same reading.
+[[nodiscard]] double inUnit(const io::Channel& channel, double canonical);
+
 /// Standard uncertainty of a channel's value x, in the channel's unit (u^2 = (sigma_rel x)^2 + sigma_abs^2).
 [[nodiscard]] double uncertainty(const io::Channel& channel, double x);
 

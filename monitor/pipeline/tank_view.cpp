@@ -88,7 +88,7 @@ class Builder {
       const auto reading = m_facts.readings.find(channel.id);
       if (reading != m_facts.readings.end() && reading->second.value) {
         const io::Instant at = reading->second.sampledAt.at;
-        view.value = io::fromCanonical(channel, *reading->second.value);
+        view.value = inUnit(channel, *reading->second.value);
         view.sampledAt = io::toRfc3339(at);
         view.source = reading->second.source;
         view.tooOld = Hours(m_now - at).count() > channel.maxAge_h;

@@ -32,7 +32,7 @@ std::vector<model::TrendPoint> points(const MarginTrend& trend, const std::strin
 
 struct Projected {
   io::wire::ProjectionView view;
-  std::optional<double> hoursToCaution;  ///< unclipped, for ordering
+  std::optional<double> hoursToCaution;  ///< for ordering: 0 inside the limit already
 };
 
 class Projector {
@@ -53,7 +53,7 @@ class Projector {
     out.view.hoursToCaution = fromNow(model::hoursUntil(*line, limit.caution));
     out.view.hoursToAct = fromNow(model::hoursUntil(*line, limit.act));
     out.view.hoursToLine = fromNow(model::hoursUntil(*line, atLine));
-    out.hoursToCaution = out.view.hoursToCaution;
+    out.hoursToCaution = line->value <= limit.caution ? std::optional<double>(0.0) : out.view.hoursToCaution;
     const bool level = std::abs(line->slope_per_h) <= kLevelWithinSigmas * line->slopeSigma;
     const double ahead_h = m_recipe.horizon_h + m_age_h;
     const double then = line->value + (level ? 0.0 : line->slope_per_h * ahead_h) - atLine;
@@ -77,7 +77,8 @@ class Projector {
 };
 
 bool sooner(const Projected& a, const Projected& b) {
-  if (a.hoursToCaution && b.hoursToCaution) return *a.hoursToCaution < *b.hoursToCaution;
+  const bool apart = a.hoursToCaution && b.hoursToCaution && *a.hoursToCaution != *b.hoursToCaution;
+  if (apart) return *a.hoursToCaution < *b.hoursToCaution;
   if (a.hoursToCaution.has_value() != b.hoursToCaution.has_value()) return a.hoursToCaution.has_value();
   return a.view.bedAtHorizon.value_or(0.0) > b.view.bedAtHorizon.value_or(0.0);
 }

@@ -19,8 +19,8 @@ inline constexpr std::chrono::hours kTrendWindow{24 * 5};
 /// Judged numbers of the margins of each result, by sample time.
 using MarginTrend = std::map<io::Instant, std::map<std::string, double>>;
 
-/// Takes the limited margin that reaches its caution limit first; where none does, the one that uses most
-/// of the bed at the horizon. Hours count from `now`. Results before `chapter` (the last dump) do not
+/// Takes the limited margin that reaches its caution limit first (one inside it already goes before); of
+/// equals, and where none does, the one that uses most of the bed at the horizon. Hours count from `now`. Results before `chapter` (the last dump) do not
 /// count. nullopt when no limited margin has enough results for a line.
 [[nodiscard]] std::optional<io::wire::ProjectionView> project(
     const io::Recipe& recipe, const std::optional<model::LiquorReport>& atTarget, const MarginTrend& trend,

@@ -45,7 +45,7 @@ io::wire::ReadingView readingView(const TankSetup* setup, const io::Reading& rea
   const io::Channel* channel = setup == nullptr ? nullptr : setup->recipe.channel(reading.channel);
   if (channel != nullptr) {
     view.unit = channel->unit;
-    if (reading.value) view.value = io::fromCanonical(*channel, *reading.value);
+    if (reading.value) view.value = inUnit(*channel, *reading.value);
   }
   view.entered = reading.entered;
   view.enteredUnit = reading.enteredUnit;

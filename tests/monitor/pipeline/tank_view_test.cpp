@@ -104,6 +104,27 @@ TEST_F(Condition, DoesNotDriftBeyondTheHorizon) {
   EXPECT_TRUE(view().projection);
 }
 
+TEST_F(Condition, ShowsTheProjectionOfTheMarginThatIsInsideItsLimit) {
+  falling(0.30, 0.02);
+  for (auto& [time, margins] : m_facts.trend) {
+    margins["ph_down"] = 2.0 - 0.1 * std::chrono::duration<double, std::ratio<86400>>(time - at("2026-02-26T06:00:00Z")).count();
+  }
+  const auto seen = view();
+  EXPECT_EQ(seen.condition, "tight");
+  ASSERT_TRUE(seen.projection);
+  EXPECT_EQ(seen.projection->margin, "ligand_loss");
+  EXPECT_FALSE(seen.projection->hoursToCaution);
+  EXPECT_NEAR(*seen.projection->hoursToAct, 119.0, 0.01);  // 0.10 at 0.02 a day, less the hour gone
+}
+
+TEST_F(Condition, ShowsValuesAsTheyWereTyped) {
+  const io::Channel& copper = *m_setup.recipe.channel("copper");
+  for (const double typed : {15.4, 22.1, 0.3, 18.7}) {
+    EXPECT_EQ(inUnit(copper, *io::toCanonical(copper, typed)), typed);
+  }
+  EXPECT_EQ(inUnit(copper, 0.0), 0.0);
+}
+
 TEST_F(Condition, DoesNotForecastFromAnUnreliableResult) {
   falling(0.45, 0.06, false);
   const auto seen = view();
