@@ -100,7 +100,7 @@ class Equilibrium {
   std::vector<std::size_t> m_unknown;  ///< component of each unknown
   std::vector<std::size_t> m_active;   ///< species of each active one
   std::vector<char> m_present, m_speciesPresent;
-  std::vector<double> m_lnA, m_c, m_lnGamma, m_savedX, m_firstX;
+  std::vector<double> m_lnA, m_c, m_lnGamma, m_savedX;
   double m_I = 0.0;
 };
 
