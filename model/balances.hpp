@@ -42,7 +42,7 @@ class Balances {
   double balanceCharge = 0.0;     ///< z of the ion that closes the charge
   std::vector<double> balanceNu;  ///< species: how many of that ion each holds
 
-  std::vector<char> nested;        ///< unknowns: this balance is not that of a stated total (Eq. 17)
+  std::vector<char> nested;  ///< unknowns: this balance is not that of a stated total (Eq. 17)
 
   std::vector<double> x;       ///< unknown ln activities
   double I = 0.0;              ///< current ionic strength; solved for only with `withI`
