@@ -11,6 +11,7 @@ namespace {
 
 constexpr int kTick_ms = 50;
 constexpr int kMost_ms = 15'000;
+constexpr int kSettleTicks = 6;
 /// A service that never answered is given up after this.
 constexpr int kUnreachable_ms = 4'000;
 constexpr int kInputIsWrong = 1;
@@ -40,7 +41,7 @@ void Snapshot::step() {
     return;
   }
   if (m_window.ready()) {
-    grab();
+    if (++m_settled >= kSettleTicks) grab();  // queued layouts and plots are drawn meanwhile
     return;
   }
   if (m_waited_ms > kMost_ms) {
@@ -66,6 +67,7 @@ void Snapshot::showNext() {
   }
   m_window.setFocus();  // no control is drawn as focused
   m_shown = true;
+  m_settled = 0;
   m_waited_ms = 0;
 }
 

@@ -35,7 +35,7 @@ class Snapshot : public QObject {
   const ShopData& m_data;
   QStringList m_left;
   QTimer m_ticks;
-  int m_waited_ms = 0;
+  int m_waited_ms = 0, m_settled = 0;
   bool m_shown = false;
 };
 

@@ -2,255 +2,6 @@
 <!DOCTYPE TS>
 <TS version="2.1" language="de_DE" sourcelanguage="en">
 <context>
-    <name>AcknowledgeDialog</name>
-    <message>
-        <source>Acknowledge</source>
-        <translation>Quittieren</translation>
-    </message>
-    <message>
-        <source>Acknowledge an alarm</source>
-        <translation>Alarm quittieren</translation>
-    </message>
-    <message>
-        <source>Raised %1 (%2), priority %3</source>
-        <translation>Ausgelöst %1 (%2), Dringlichkeit %3</translation>
-    </message>
-    <message>
-        <source>What to do: %1</source>
-        <translation>Was zu tun ist: %1</translation>
-    </message>
-    <message>
-        <source>Your initials</source>
-        <translation>Ihr Kürzel</translation>
-    </message>
-    <message>
-        <source>Comment, may stay empty</source>
-        <translation>Bemerkung, darf leer bleiben</translation>
-    </message>
-    <message>
-        <source>Comment</source>
-        <translation>Bemerkung</translation>
-    </message>
-    <message>
-        <source>Not now</source>
-        <translation>Jetzt nicht</translation>
-    </message>
-    <message>
-        <source>Close without acknowledging</source>
-        <translation>Schließen, ohne zu quittieren</translation>
-    </message>
-    <message>
-        <source>Acknowledge the alarm under your initials</source>
-        <translation>Alarm unter Ihrem Kürzel quittieren</translation>
-    </message>
-    <message>
-        <source>Not taken: %1</source>
-        <translation>Nicht angenommen: %1</translation>
-    </message>
-</context>
-<context>
-    <name>AnalysisPanel</name>
-    <message>
-        <source>Close</source>
-        <translation>Schließen</translation>
-    </message>
-    <message>
-        <source>Close the analysis</source>
-        <translation>Analyse schließen</translation>
-    </message>
-    <message>
-        <source>Fetching the analysis…</source>
-        <translation>Analyse wird geholt …</translation>
-    </message>
-    <message>
-        <source>Not available: %1</source>
-        <translation>Nicht verfügbar: %1</translation>
-    </message>
-    <message>
-        <source>%1 ?</source>
-        <translation>%1 ?</translation>
-    </message>
-    <message>
-        <source>%1: %2 %3</source>
-        <translation>%1: %2 %3</translation>
-    </message>
-    <message>
-        <source>pM of %1</source>
-        <translation>pM von %1</translation>
-    </message>
-    <message>
-        <source>pH in the bath</source>
-        <translation>pH im Bad</translation>
-    </message>
-    <message>
-        <source>Temperature</source>
-        <translation>Temperatur</translation>
-    </message>
-    <message>
-        <source>Ionic strength</source>
-        <translation>Ionenstärke</translation>
-    </message>
-    <message>
-        <source>Free %1: %2</source>
-        <translation>%1, frei: %2</translation>
-    </message>
-    <message>
-        <source>Where the %1 is</source>
-        <translation>Wo %1 steckt</translation>
-    </message>
-    <message>
-        <source>all others</source>
-        <translation>alle übrigen</translation>
-    </message>
-    <message>
-        <source>Saturation (0 = sludge line):</source>
-        <translation>Sättigung (0 = Schlammlinie):</translation>
-    </message>
-    <message>
-        <source>absent</source>
-        <translation>nicht vorhanden</translation>
-    </message>
-    <message>
-        <source>%1: lg %2</source>
-        <extracomment>name of a solid, its logarithm of saturation</extracomment>
-        <translation>%1: lg %2</translation>
-    </message>
-</context>
-<context>
-    <name>AttentionStrip</name>
-    <message>
-        <source>Needs somebody</source>
-        <translation>Braucht jemanden</translation>
-    </message>
-    <message>
-        <source>No tank needs anybody.</source>
-        <translation>Kein Bad braucht jemanden.</translation>
-    </message>
-    <message>
-        <source>Alarms to acknowledge</source>
-        <translation>Alarme zu quittieren</translation>
-    </message>
-    <message>
-        <source>No alarm waits for an answer.</source>
-        <translation>Kein Alarm wartet auf Antwort.</translation>
-    </message>
-    <message>
-        <source>Due</source>
-        <translation>Fällig</translation>
-    </message>
-    <message>
-        <source>Nothing is due.</source>
-        <translation>Nichts ist fällig.</translation>
-    </message>
-</context>
-<context>
-    <name>BenchPanel</name>
-    <message>
-        <source>acknowledge alarm…</source>
-        <translation>Alarm quittieren …</translation>
-    </message>
-    <message>
-        <source>Previous tank</source>
-        <translation>Voriges Bad</translation>
-    </message>
-    <message>
-        <source>Next tank</source>
-        <translation>Nächstes Bad</translation>
-    </message>
-    <message>
-        <source>overdue, %1</source>
-        <translation>überfällig, %1</translation>
-    </message>
-    <message>
-        <source>%1: sampled %2; window %3 to %4, target %5</source>
-        <translation>%1: Probe %2; Fenster %3 bis %4, Soll %5</translation>
-    </message>
-    <message>
-        <source>due %1</source>
-        <translation>fällig %1</translation>
-    </message>
-    <message>
-        <source>act %1</source>
-        <translation>Eingriff %1</translation>
-    </message>
-    <message>
-        <source>caution %1</source>
-        <translation>Vorsicht %1</translation>
-    </message>
-    <message>
-        <source>no limit set</source>
-        <translation>keine Grenze gesetzt</translation>
-    </message>
-    <message>
-        <source>%1: %2 until %3 reaches its sludge line</source>
-        <translation>%1: %2, bis %3 seine Schlammlinie erreicht</translation>
-    </message>
-    <message>
-        <source> (%1)</source>
-        <translation> (%1)</translation>
-    </message>
-    <message>
-        <source>Doubtful: %1.</source>
-        <translation>Zweifelhaft: %1.</translation>
-    </message>
-    <message>
-        <source>Doubtful: the numbers are given, but not reliable.</source>
-        <translation>Zweifelhaft: Die Zahlen stehen da, sind aber nicht verlässlich.</translation>
-    </message>
-    <message>
-        <source>Not reliable over the whole window: %1</source>
-        <translation>Nicht im ganzen Fenster verlässlich: %1</translation>
-    </message>
-    <message>
-        <source>The deciding constant is uncertain: calibrate with a jar test.</source>
-        <translation>Die entscheidende Konstante ist unsicher: mit einem Becherglasversuch kalibrieren.</translation>
-    </message>
-    <message>
-        <source>%1, %2</source>
-        <translation>%1, %2</translation>
-    </message>
-    <message>
-        <source>used margin %1</source>
-        <translation>verbrauchter Spielraum %1</translation>
-    </message>
-    <message>
-        <source>used margin unknown</source>
-        <translation>verbrauchter Spielraum unbekannt</translation>
-    </message>
-    <message>
-        <source>%1; read %2</source>
-        <translation>%1; gemessen %2</translation>
-    </message>
-    <message>
-        <source>%1: %2</source>
-        <translation>%1: %2</translation>
-    </message>
-    <message>
-        <source>pM of %1</source>
-        <translation>pM von %1</translation>
-    </message>
-    <message>
-        <source>minus the decimal logarithm of the activity of the free metal ion</source>
-        <translation>negativer dekadischer Logarithmus der Aktivität des freien Metallions</translation>
-    </message>
-    <message>
-        <source>Mind: %1</source>
-        <translation>Achtung: %1</translation>
-    </message>
-    <message>
-        <source>Show or hide the cautions: %1</source>
-        <translation>Hinweise zeigen oder verbergen: %1</translation>
-    </message>
-</context>
-<context>
-    <name>BenchRow</name>
-    <message>
-        <source>%1 %2; %3 %4; %5</source>
-        <extracomment>name, value, limits, age</extracomment>
-        <translation>%1 %2; %3 %4; %5</translation>
-    </message>
-</context>
-<context>
     <name>Cautions</name>
     <message>
         <source>Ammonia</source>
@@ -468,59 +219,6 @@
     </message>
 </context>
 <context>
-    <name>LargeTank</name>
-    <message>
-        <source>caution</source>
-        <translation>Vorsicht</translation>
-    </message>
-    <message>
-        <source>act</source>
-        <translation>Eingriff</translation>
-    </message>
-    <message>
-        <source>sludge line</source>
-        <translation>Schlammlinie</translation>
-    </message>
-    <message>
-        <source>out of service</source>
-        <translation>außer Betrieb</translation>
-    </message>
-</context>
-<context>
-    <name>Legend</name>
-    <message>
-        <source>Legend: the hatched bed is the used margin; the dashed mark is where it will stand at the end of the horizon; the ticks are the caution and act limits; the notch is the sludge line.</source>
-        <translation>Legende: Das schraffierte Bett ist der verbrauchte Spielraum; die gestrichelte Marke zeigt, wo es am Ende des Ausblicks stehen wird; die Striche sind die Vorsichts- und die Eingriffsgrenze; die Kerbe ist die Schlammlinie.</translation>
-    </message>
-    <message>
-        <source>used margin</source>
-        <translation>verbrauchter Spielraum</translation>
-    </message>
-    <message>
-        <source>at the end of the horizon</source>
-        <translation>am Ende des Ausblicks</translation>
-    </message>
-    <message>
-        <source>caution, act</source>
-        <translation>Vorsicht, Eingriff</translation>
-    </message>
-</context>
-<context>
-    <name>MainWindow</name>
-    <message>
-        <source>Tankward</source>
-        <translation>Tankward</translation>
-    </message>
-    <message>
-        <source>The service does not answer. You see what was known at %1. Trying again…</source>
-        <translation>Der Dienst antwortet nicht. Sie sehen den Stand von %1. Neuer Versuch läuft …</translation>
-    </message>
-    <message>
-        <source>The service does not answer. Trying again…</source>
-        <translation>Der Dienst antwortet nicht. Neuer Versuch läuft …</translation>
-    </message>
-</context>
-<context>
     <name>Reasons</name>
     <message>
         <source>%1 times</source>
@@ -531,24 +229,24 @@
         <translation>%1: %2</translation>
     </message>
     <message>
-        <source>%1 down to %2, act limit %3</source>
-        <translation>%1 nur noch %2, Eingriffsgrenze %3</translation>
+        <source>%1: only %2 left, act limit %3</source>
+        <translation>%1: nur noch %2, Eingriffsgrenze %3</translation>
     </message>
     <message>
-        <source>%1 down to %2, caution limit %3</source>
-        <translation>%1 nur noch %2, Vorsichtsgrenze %3</translation>
+        <source>%1: only %2 left, caution limit %3</source>
+        <translation>%1: nur noch %2, Vorsichtsgrenze %3</translation>
     </message>
     <message>
         <source>%1 outside its limits</source>
         <translation>%1 außerhalb der Grenzen</translation>
     </message>
     <message>
-        <source>%1 %2, below its window (%3 to %4)</source>
-        <translation>%1 %2, unter dem Fenster (%3 bis %4)</translation>
+        <source>%1 %2, below its window %3–%4</source>
+        <translation>%1 %2, unter dem Fenster %3–%4</translation>
     </message>
     <message>
-        <source>%1 %2, above its window (%3 to %4)</source>
-        <translation>%1 %2, über dem Fenster (%3 bis %4)</translation>
+        <source>%1 %2, above its window %3–%4</source>
+        <translation>%1 %2, über dem Fenster %3–%4</translation>
     </message>
     <message>
         <source>%1 %2, past its act limit %3</source>
@@ -676,215 +374,6 @@
     </message>
 </context>
 <context>
-    <name>ShareBars</name>
-    <message>
-        <source>%1 %2</source>
-        <translation>%1 %2</translation>
-    </message>
-</context>
-<context>
-    <name>StripColumn</name>
-    <message>
-        <source>%1 (%2)</source>
-        <translation>%1 (%2)</translation>
-    </message>
-</context>
-<context>
-    <name>StripRow</name>
-    <message>
-        <source>%1: %2</source>
-        <translation>%1: %2</translation>
-    </message>
-</context>
-<context>
-    <name>Strips</name>
-    <message>
-        <source>Strips over time</source>
-        <translation>Streifen über der Zeit</translation>
-    </message>
-    <message>
-        <source>d, w, m, y choose day, week, month, year; Left and Right move the crosshair; Enter opens the analysis.</source>
-        <translation>d, w, m, y wählen Tag, Woche, Monat, Jahr; Links und Rechts bewegen das Fadenkreuz; Eingabe öffnet die Analyse.</translation>
-    </message>
-    <message>
-        <source>now</source>
-        <translation>jetzt</translation>
-    </message>
-    <message>
-        <source>caution</source>
-        <translation>Vorsicht</translation>
-    </message>
-    <message>
-        <source>act</source>
-        <translation>Eingriff</translation>
-    </message>
-    <message>
-        <source>dashed: straight line</source>
-        <translation>gestrichelt: Gerade</translation>
-    </message>
-</context>
-<context>
-    <name>TankCard</name>
-    <message>
-        <source>read %1</source>
-        <translation>gemessen %1</translation>
-    </message>
-    <message>
-        <source>no reading yet</source>
-        <translation>noch keine Messung</translation>
-    </message>
-    <message>
-        <source>out of service</source>
-        <translation>außer Betrieb</translation>
-    </message>
-    <message>
-        <source>used margin %1</source>
-        <translation>verbrauchter Spielraum %1</translation>
-    </message>
-    <message>
-        <source>used margin unknown</source>
-        <translation>verbrauchter Spielraum unbekannt</translation>
-    </message>
-    <message>
-        <source>, in %1: %2</source>
-        <translation>, in %1: %2</translation>
-    </message>
-    <message>
-        <source>Open %1: %2, %3, %4, %5</source>
-        <translation>%1 öffnen: %2, %3, %4, %5</translation>
-    </message>
-    <message>
-        <source>%1: %2</source>
-        <translation>%1: %2</translation>
-    </message>
-</context>
-<context>
-    <name>TankView</name>
-    <message>
-        <source>key %1</source>
-        <translation>Taste %1</translation>
-    </message>
-    <message>
-        <source>Show a %1 (key %2)</source>
-        <translation>Zeige %1 (Taste %2)</translation>
-    </message>
-    <message>
-        <source>day</source>
-        <translation>Tag</translation>
-    </message>
-    <message>
-        <source>week</source>
-        <translation>Woche</translation>
-    </message>
-    <message>
-        <source>month</source>
-        <translation>Monat</translation>
-    </message>
-    <message>
-        <source>year</source>
-        <translation>Jahr</translation>
-    </message>
-    <message>
-        <source>tick at the foot: addition · dash-dot line: dump · bar at the top: alarm · hollow: corrected</source>
-        <translation>Strich am Fuß: Zugabe · Strichpunktlinie: Neuansatz · Balken oben: Alarm · hohl: berichtigt</translation>
-    </message>
-    <message>
-        <source>Which margin the first strip shows</source>
-        <translation>Welchen Spielraum der erste Streifen zeigt</translation>
-    </message>
-    <message>
-        <source>Part of the trend is missing: %1</source>
-        <translation>Ein Teil des Verlaufs fehlt: %1</translation>
-    </message>
-    <message>
-        <source>Strip %1</source>
-        <translation>Streifen %1</translation>
-    </message>
-</context>
-<context>
-    <name>TopBar</name>
-    <message>
-        <source>Line</source>
-        <translation>Linie</translation>
-    </message>
-    <message>
-        <source>Tank</source>
-        <translation>Bad</translation>
-    </message>
-    <message>
-        <source>Who acts</source>
-        <translation>Wer handelt</translation>
-    </message>
-    <message>
-        <source>Show the line (Alt+1)</source>
-        <translation>Linie zeigen (Alt+1)</translation>
-    </message>
-    <message>
-        <source>Show the tank (Alt+2)</source>
-        <translation>Bad zeigen (Alt+2)</translation>
-    </message>
-    <message>
-        <source>Alt+1</source>
-        <translation>Alt+1</translation>
-    </message>
-    <message>
-        <source>Alt+2, next and previous tank: Ctrl+Page Down, Ctrl+Page Up</source>
-        <translation>Alt+2, nächstes und voriges Bad: Strg+Bild ab, Strg+Bild auf</translation>
-    </message>
-    <message>
-        <source>initials</source>
-        <translation>Kürzel</translation>
-    </message>
-    <message>
-        <source>Who acts: initials</source>
-        <translation>Wer handelt: Kürzel</translation>
-    </message>
-    <message>
-        <source>Tankward</source>
-        <translation>Tankward</translation>
-    </message>
-    <message>
-        <source>connecting…</source>
-        <translation>verbindet …</translation>
-    </message>
-    <message>
-        <source>connected, live</source>
-        <translation>verbunden, live</translation>
-    </message>
-    <message>
-        <source>connected</source>
-        <translation>verbunden</translation>
-    </message>
-    <message>
-        <source>service lost</source>
-        <translation>Dienst fehlt</translation>
-    </message>
-    <message>
-        <source>Service: %1</source>
-        <translation>Dienst: %1</translation>
-    </message>
-    <message>
-        <source>last heard %1</source>
-        <translation>zuletzt gehört %1</translation>
-    </message>
-    <message>
-        <source>Dark</source>
-        <translation>Dunkel</translation>
-    </message>
-    <message>
-        <source>Light</source>
-        <translation>Hell</translation>
-    </message>
-    <message>
-        <source>Switch to the dark theme</source>
-        <translation>Zum dunklen Farbschema wechseln</translation>
-    </message>
-    <message>
-        <source>Switch to the light theme</source>
-        <translation>Zum hellen Farbschema wechseln</translation>
-    </message>
-</context>
-<context>
     <name>Words</name>
     <message>
         <source>fine</source>
@@ -952,32 +441,32 @@
         <translation>Bad darf verdünnt werden</translation>
     </message>
     <message>
-        <source>room for pH to rise</source>
-        <translation>pH-Luft nach oben</translation>
+        <source>pH room up</source>
+        <translation>pH-Spielraum auf</translation>
     </message>
     <message>
-        <source>room for pH to fall</source>
-        <translation>pH-Luft nach unten</translation>
+        <source>pH room down</source>
+        <translation>pH-Spielraum ab</translation>
     </message>
     <message>
         <source>%1 reserve</source>
         <translation>%1-Reserve</translation>
     </message>
     <message>
-        <source>room for more metal</source>
-        <translation>Luft für mehr Metall</translation>
+        <source>metal room</source>
+        <translation>Metallspielraum</translation>
     </message>
     <message>
-        <source>room to warm</source>
-        <translation>Luft nach warm</translation>
+        <source>warming room</source>
+        <translation>Wärmespielraum</translation>
     </message>
     <message>
-        <source>room to cool</source>
-        <translation>Luft nach kalt</translation>
+        <source>cooling room</source>
+        <translation>Kältespielraum</translation>
     </message>
     <message>
-        <source>room for water</source>
-        <translation>Luft für Wasser</translation>
+        <source>dilution room</source>
+        <translation>Wasserspielraum</translation>
     </message>
     <message>
         <source>ligand</source>
@@ -1086,6 +575,517 @@
     <message>
         <source>low</source>
         <translation>niedrig</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::AcknowledgeDialog</name>
+    <message>
+        <source>Acknowledge</source>
+        <translation>Quittieren</translation>
+    </message>
+    <message>
+        <source>Acknowledge an alarm</source>
+        <translation>Alarm quittieren</translation>
+    </message>
+    <message>
+        <source>Raised %1 (%2), priority %3</source>
+        <translation>Ausgelöst %1 (%2), Dringlichkeit %3</translation>
+    </message>
+    <message>
+        <source>What to do: %1</source>
+        <translation>Was zu tun ist: %1</translation>
+    </message>
+    <message>
+        <source>Your initials</source>
+        <translation>Ihr Kürzel</translation>
+    </message>
+    <message>
+        <source>Comment, may stay empty</source>
+        <translation>Bemerkung, darf leer bleiben</translation>
+    </message>
+    <message>
+        <source>Comment</source>
+        <translation>Bemerkung</translation>
+    </message>
+    <message>
+        <source>Not now</source>
+        <translation>Jetzt nicht</translation>
+    </message>
+    <message>
+        <source>Close without acknowledging</source>
+        <translation>Schließen, ohne zu quittieren</translation>
+    </message>
+    <message>
+        <source>Acknowledge the alarm under your initials</source>
+        <translation>Alarm unter Ihrem Kürzel quittieren</translation>
+    </message>
+    <message>
+        <source>Not taken: %1</source>
+        <translation>Nicht angenommen: %1</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::AnalysisPanel</name>
+    <message>
+        <source>Close</source>
+        <translation>Schließen</translation>
+    </message>
+    <message>
+        <source>Close the analysis</source>
+        <translation>Analyse schließen</translation>
+    </message>
+    <message>
+        <source>Fetching the analysis…</source>
+        <translation>Analyse wird geholt …</translation>
+    </message>
+    <message>
+        <source>Not available: %1</source>
+        <translation>Nicht verfügbar: %1</translation>
+    </message>
+    <message>
+        <source>%1 ?</source>
+        <translation>%1 ?</translation>
+    </message>
+    <message>
+        <source>%1: %2 %3</source>
+        <translation>%1: %2 %3</translation>
+    </message>
+    <message>
+        <source>pM of %1</source>
+        <translation>pM von %1</translation>
+    </message>
+    <message>
+        <source>pH in the bath</source>
+        <translation>pH im Bad</translation>
+    </message>
+    <message>
+        <source>Temperature</source>
+        <translation>Temperatur</translation>
+    </message>
+    <message>
+        <source>Ionic strength</source>
+        <translation>Ionenstärke</translation>
+    </message>
+    <message>
+        <source>Free %1: %2</source>
+        <translation>%1, frei: %2</translation>
+    </message>
+    <message>
+        <source>Where the %1 is</source>
+        <translation>Wo %1 steckt</translation>
+    </message>
+    <message>
+        <source>all others</source>
+        <translation>alle übrigen</translation>
+    </message>
+    <message>
+        <source>Saturation (0 = sludge line):</source>
+        <translation>Sättigung (0 = Schlammlinie):</translation>
+    </message>
+    <message>
+        <source>absent</source>
+        <translation>nicht vorhanden</translation>
+    </message>
+    <message>
+        <source>%1: lg %2</source>
+        <extracomment>name of a solid, its logarithm of saturation</extracomment>
+        <translation>%1: lg %2</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::AttentionStrip</name>
+    <message>
+        <source>Needs somebody</source>
+        <translation>Braucht jemanden</translation>
+    </message>
+    <message>
+        <source>No tank needs anybody.</source>
+        <translation>Kein Bad braucht jemanden.</translation>
+    </message>
+    <message>
+        <source>Alarms to acknowledge</source>
+        <translation>Alarme zu quittieren</translation>
+    </message>
+    <message>
+        <source>No alarm waits for an answer.</source>
+        <translation>Kein Alarm wartet auf Antwort.</translation>
+    </message>
+    <message>
+        <source>Due</source>
+        <translation>Fällig</translation>
+    </message>
+    <message>
+        <source>Nothing is due.</source>
+        <translation>Nichts ist fällig.</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::BenchPanel</name>
+    <message>
+        <source>acknowledge alarm…</source>
+        <translation>Alarm quittieren …</translation>
+    </message>
+    <message>
+        <source>Previous tank</source>
+        <translation>Voriges Bad</translation>
+    </message>
+    <message>
+        <source>Next tank</source>
+        <translation>Nächstes Bad</translation>
+    </message>
+    <message>
+        <source>overdue, %1</source>
+        <translation>überfällig, %1</translation>
+    </message>
+    <message>
+        <source>%1: sampled %2; window %3 to %4, target %5</source>
+        <translation>%1: Probe %2; Fenster %3 bis %4, Soll %5</translation>
+    </message>
+    <message>
+        <source>due %1</source>
+        <translation>fällig %1</translation>
+    </message>
+    <message>
+        <source>act %1</source>
+        <translation>Eingriff %1</translation>
+    </message>
+    <message>
+        <source>caution %1</source>
+        <translation>Vorsicht %1</translation>
+    </message>
+    <message>
+        <source>no limit set</source>
+        <translation>keine Grenze gesetzt</translation>
+    </message>
+    <message>
+        <source>%1: %2 until %3 reaches its sludge line</source>
+        <translation>%1: %2, bis %3 seine Schlammlinie erreicht</translation>
+    </message>
+    <message>
+        <source> (%1)</source>
+        <translation> (%1)</translation>
+    </message>
+    <message>
+        <source>Doubtful: %1.</source>
+        <translation>Zweifelhaft: %1.</translation>
+    </message>
+    <message>
+        <source>Doubtful: the numbers are given, but not reliable.</source>
+        <translation>Zweifelhaft: Die Zahlen stehen da, sind aber nicht verlässlich.</translation>
+    </message>
+    <message>
+        <source>Not reliable over the whole window: %1</source>
+        <translation>Nicht im ganzen Fenster verlässlich: %1</translation>
+    </message>
+    <message>
+        <source>The deciding constant is uncertain: calibrate with a jar test.</source>
+        <translation>Die entscheidende Konstante ist unsicher: mit einem Becherglasversuch kalibrieren.</translation>
+    </message>
+    <message>
+        <source>%1, %2</source>
+        <translation>%1, %2</translation>
+    </message>
+    <message>
+        <source>used margin %1</source>
+        <translation>verbrauchter Spielraum %1</translation>
+    </message>
+    <message>
+        <source>used margin unknown</source>
+        <translation>verbrauchter Spielraum unbekannt</translation>
+    </message>
+    <message>
+        <source>%1; read %2</source>
+        <translation>%1; gemessen %2</translation>
+    </message>
+    <message>
+        <source>%1: %2</source>
+        <translation>%1: %2</translation>
+    </message>
+    <message>
+        <source>pM of %1</source>
+        <translation>pM von %1</translation>
+    </message>
+    <message>
+        <source>minus the decimal logarithm of the activity of the free metal ion</source>
+        <translation>negativer dekadischer Logarithmus der Aktivität des freien Metallions</translation>
+    </message>
+    <message>
+        <source>Mind: %1</source>
+        <translation>Achtung: %1</translation>
+    </message>
+    <message>
+        <source>Show or hide the cautions: %1</source>
+        <translation>Hinweise zeigen oder verbergen: %1</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::BenchRow</name>
+    <message>
+        <source>%1 %2; %3 %4; %5</source>
+        <extracomment>name, value, limits, age</extracomment>
+        <translation>%1 %2; %3 %4; %5</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::LargeTank</name>
+    <message>
+        <source>caution</source>
+        <translation>Vorsicht</translation>
+    </message>
+    <message>
+        <source>act</source>
+        <translation>Eingriff</translation>
+    </message>
+    <message>
+        <source>sludge line</source>
+        <translation>Schlammlinie</translation>
+    </message>
+    <message>
+        <source>out of service</source>
+        <translation>außer Betrieb</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::Legend</name>
+    <message>
+        <source>Legend: the hatched bed is the used margin; the dashed mark is where it will stand at the end of the horizon; the ticks are the caution and act limits; the notch is the sludge line.</source>
+        <translation>Legende: Das schraffierte Bett ist der verbrauchte Spielraum; die gestrichelte Marke zeigt, wo es am Ende des Ausblicks stehen wird; die Striche sind die Vorsichts- und die Eingriffsgrenze; die Kerbe ist die Schlammlinie.</translation>
+    </message>
+    <message>
+        <source>used margin</source>
+        <translation>verbrauchter Spielraum</translation>
+    </message>
+    <message>
+        <source>at the end of the horizon</source>
+        <translation>am Ende des Ausblicks</translation>
+    </message>
+    <message>
+        <source>caution, act</source>
+        <translation>Vorsicht, Eingriff</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::MainWindow</name>
+    <message>
+        <source>Tankward</source>
+        <translation>Tankward</translation>
+    </message>
+    <message>
+        <source>The service does not answer. You see what was known at %1. Trying again…</source>
+        <translation>Der Dienst antwortet nicht. Sie sehen den Stand von %1. Neuer Versuch läuft …</translation>
+    </message>
+    <message>
+        <source>The service does not answer. Trying again…</source>
+        <translation>Der Dienst antwortet nicht. Neuer Versuch läuft …</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::ShareBars</name>
+    <message>
+        <source>%1 %2</source>
+        <translation>%1 %2</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::StripColumn</name>
+    <message>
+        <source>%1 (%2)</source>
+        <translation>%1 (%2)</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::StripRow</name>
+    <message>
+        <source>%1: %2</source>
+        <translation>%1: %2</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::Strips</name>
+    <message>
+        <source>Strips over time</source>
+        <translation>Streifen über der Zeit</translation>
+    </message>
+    <message>
+        <source>d, w, m, y choose day, week, month, year; Left and Right move the crosshair; Enter opens the analysis.</source>
+        <translation>d, w, m, y wählen Tag, Woche, Monat, Jahr; Links und Rechts bewegen das Fadenkreuz; Eingabe öffnet die Analyse.</translation>
+    </message>
+    <message>
+        <source>now</source>
+        <translation>jetzt</translation>
+    </message>
+    <message>
+        <source>caution</source>
+        <translation>Vorsicht</translation>
+    </message>
+    <message>
+        <source>act</source>
+        <translation>Eingriff</translation>
+    </message>
+    <message>
+        <source>dashed: straight line ahead</source>
+        <translation>gestrichelt: Gerade voraus</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::TankCard</name>
+    <message>
+        <source>read %1</source>
+        <translation>gemessen %1</translation>
+    </message>
+    <message>
+        <source>no reading yet</source>
+        <translation>noch keine Messung</translation>
+    </message>
+    <message>
+        <source>out of service</source>
+        <translation>außer Betrieb</translation>
+    </message>
+    <message>
+        <source>used margin %1</source>
+        <translation>verbrauchter Spielraum %1</translation>
+    </message>
+    <message>
+        <source>used margin unknown</source>
+        <translation>verbrauchter Spielraum unbekannt</translation>
+    </message>
+    <message>
+        <source>, in %1: %2</source>
+        <translation>, in %1: %2</translation>
+    </message>
+    <message>
+        <source>Open %1: %2, %3, %4, %5</source>
+        <translation>%1 öffnen: %2, %3, %4, %5</translation>
+    </message>
+    <message>
+        <source>%1: %2</source>
+        <translation>%1: %2</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::TankView</name>
+    <message>
+        <source>key %1</source>
+        <translation>Taste %1</translation>
+    </message>
+    <message>
+        <source>Show a %1 (key %2)</source>
+        <translation>Zeige %1 (Taste %2)</translation>
+    </message>
+    <message>
+        <source>day</source>
+        <translation>Tag</translation>
+    </message>
+    <message>
+        <source>week</source>
+        <translation>Woche</translation>
+    </message>
+    <message>
+        <source>month</source>
+        <translation>Monat</translation>
+    </message>
+    <message>
+        <source>year</source>
+        <translation>Jahr</translation>
+    </message>
+    <message>
+        <source>tick at the foot: addition · dash-dot line: dump · bar at the top: alarm · hollow: corrected</source>
+        <translation>Strich am Fuß: Zugabe · Strichpunktlinie: Neuansatz · Balken oben: Alarm · hohl: berichtigt</translation>
+    </message>
+    <message>
+        <source>Which margin the first strip shows</source>
+        <translation>Welchen Spielraum der erste Streifen zeigt</translation>
+    </message>
+    <message>
+        <source>Part of the trend is missing: %1</source>
+        <translation>Ein Teil des Verlaufs fehlt: %1</translation>
+    </message>
+    <message>
+        <source>Strip %1</source>
+        <translation>Streifen %1</translation>
+    </message>
+</context>
+<context>
+    <name>tw::ui::TopBar</name>
+    <message>
+        <source>Line</source>
+        <translation>Linie</translation>
+    </message>
+    <message>
+        <source>Tank</source>
+        <translation>Bad</translation>
+    </message>
+    <message>
+        <source>Who acts</source>
+        <translation>Wer handelt</translation>
+    </message>
+    <message>
+        <source>Show the line (Alt+1)</source>
+        <translation>Linie zeigen (Alt+1)</translation>
+    </message>
+    <message>
+        <source>Show the tank (Alt+2)</source>
+        <translation>Bad zeigen (Alt+2)</translation>
+    </message>
+    <message>
+        <source>Alt+1</source>
+        <translation>Alt+1</translation>
+    </message>
+    <message>
+        <source>Alt+2, next and previous tank: Ctrl+Page Down, Ctrl+Page Up</source>
+        <translation>Alt+2, nächstes und voriges Bad: Strg+Bild ab, Strg+Bild auf</translation>
+    </message>
+    <message>
+        <source>initials</source>
+        <translation>Kürzel</translation>
+    </message>
+    <message>
+        <source>Who acts: initials</source>
+        <translation>Wer handelt: Kürzel</translation>
+    </message>
+    <message>
+        <source>Tankward</source>
+        <translation>Tankward</translation>
+    </message>
+    <message>
+        <source>connecting…</source>
+        <translation>verbindet …</translation>
+    </message>
+    <message>
+        <source>connected, live</source>
+        <translation>verbunden, live</translation>
+    </message>
+    <message>
+        <source>connected</source>
+        <translation>verbunden</translation>
+    </message>
+    <message>
+        <source>service lost</source>
+        <translation>Dienst fehlt</translation>
+    </message>
+    <message>
+        <source>Service: %1</source>
+        <translation>Dienst: %1</translation>
+    </message>
+    <message>
+        <source>last heard %1</source>
+        <translation>zuletzt gehört %1</translation>
+    </message>
+    <message>
+        <source>Dark</source>
+        <translation>Dunkel</translation>
+    </message>
+    <message>
+        <source>Light</source>
+        <translation>Hell</translation>
+    </message>
+    <message>
+        <source>Switch to the dark theme</source>
+        <translation>Zum dunklen Farbschema wechseln</translation>
+    </message>
+    <message>
+        <source>Switch to the light theme</source>
+        <translation>Zum hellen Farbschema wechseln</translation>
     </message>
 </context>
 </TS>

@@ -13,7 +13,7 @@ struct Pair {
 
 // In the order of Role. Contrast of every pair that meets on screen is measured in
 // tests/ui/contrast_test.cpp.
-constexpr std::array<Pair, 24> kColors = {{
+constexpr std::array<Pair, 25> kColors = {{
     {Role::Window, 0xffe9edf0, 0xff10161c},
     {Role::Surface, 0xffffffff, 0xff19222b},
     {Role::Raised, 0xfff3f6f8, 0xff232e39},
@@ -24,6 +24,7 @@ constexpr std::array<Pair, 24> kColors = {{
     {Role::Press, 0xff22364a, 0xffd5e0e9},
     {Role::PressInk, 0xffffffff, 0xff13202b},
     {Role::Focus, 0xff00696b, 0xff63d2cb},
+    {Role::Gap, 0xffffffff, 0xffd9e2e9},
     {Role::Band, 0xffe4edf1, 0xff22303b},
     {Role::Caution, 0xff8a5a00, 0xffdcab47},
     {Role::Act, 0xff7b2d63, 0xffdf95c6},
@@ -33,8 +34,8 @@ constexpr std::array<Pair, 24> kColors = {{
     {Role::Tight, 0xff835500, 0xffdcab47},
     {Role::Brink, 0xff7b2d63, 0xffdf95c6},
     {Role::Sludging, 0xff4d113d, 0xfff0b7dd},
-    {Role::SludgingFill, 0xff4d113d, 0xfff0b7dd},
-    {Role::SludgingInk, 0xffffffff, 0xff33082a},
+    {Role::SludgingFill, 0xff4d113d, 0xff7a2464},
+    {Role::SludgingInk, 0xffffffff, 0xffffffff},
     {Role::Stale, 0xff5c656c, 0xff9ea8b0},
     {Role::LostFill, 0xff16212b, 0xffe9eff4},
     {Role::LostInk, 0xffffffff, 0xff10161c},

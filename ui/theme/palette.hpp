@@ -22,6 +22,7 @@ enum class Role {
   Press,        ///< filled button
   PressInk,     ///< text on it
   Focus,        ///< ring around what has the keyboard
+  Gap,          ///< between bed and liquor: pale in both themes
   Band,         ///< the window of a channel, as an area
   Caution,      ///< the caution line
   Act,          ///< the act line

@@ -18,32 +18,30 @@ QFont textFont(int pixelSize, bool bold) {
 
 QString styleSheet(const Theme& theme) {
   const auto name = [&](Role role) { return theme.color(role).name(); };
-  // %1 window %2 surface %3 raised %4 edge %5 ink %6 press %7 press ink %8 focus %9 soft ink
+  // %1 surface %2 raised %3 edge %4 ink %5 press %6 press ink %7 focus %8 soft ink
   return QStringLiteral(
-             "QPushButton, QToolButton, QComboBox { min-height: 42px; padding: 0 14px; border: 1px solid %4;"
-             "  border-radius: 5px; background: %2; color: %5; }"
-             "QPushButton:hover, QToolButton:hover, QComboBox:hover { background: %3; border-color: %5; }"
-             "QPushButton:pressed, QToolButton:pressed { background: %4; }"
-             "QPushButton[primary=\"true\"] { background: %6; color: %7; border-color: %6;"
-             "  font-weight: bold; }"
-             "QPushButton:checked, QToolButton:checked { background: %6; color: %7; border-color: %6; }"
-             "QPushButton:focus, QToolButton:focus, QComboBox:focus, QLineEdit:focus, QPlainTextEdit:focus"
-             "  { border: 3px solid %8; padding: 0 12px; }"
-             "QPushButton:disabled { color: %9; border-style: dashed; }"
-             "QLineEdit { min-height: 42px; padding: 0 10px; border: 1px solid %4; border-radius: 5px;"
-             "  background: %2; color: %5; }"
-             "QComboBox QAbstractItemView { background: %2; color: %5; selection-background-color: %6;"
-             "  selection-color: %7; }"
-             "QToolTip { background: %2; color: %5; border: 1px solid %4; padding: 6px; }"
+             "QPushButton { min-height: 42px; padding: 0 14px; border: 1px solid %3; border-radius: 5px;"
+             "  background: %1; color: %4; }"
+             "QPushButton:hover { background: %2; border-color: %4; }"
+             "QPushButton:pressed { background: %3; }"
+             "QPushButton[primary=\"true\"] { background: %5; color: %6; border-color: %5; font-weight: bold; }"
+             "QPushButton:checked { background: %5; color: %6; border-color: %5; }"
+             "QPushButton:disabled { background: %1; color: %8; border: 1px dashed %3; }"
+             "QLineEdit { min-height: 42px; padding: 0 10px; border: 1px solid %3; border-radius: 5px;"
+             "  background: %1; color: %4; }"
+             "QPushButton:focus { border: 3px solid %7; padding: 0 12px; min-height: 38px; }"
+             "QLineEdit:focus { border: 3px solid %7; padding: 0 8px; min-height: 38px; }"
+             "QComboBox { min-height: 40px; }"
+             "QToolTip { background: %1; color: %4; border: 1px solid %3; padding: 6px; }"
              "QScrollArea, QScrollArea > QWidget > QWidget { background: transparent; border: none; }"
-             "QScrollBar:horizontal { height: 16px; background: transparent; }"
-             "QScrollBar:vertical { width: 16px; background: transparent; }"
-             "QScrollBar::handle { background: %4; border-radius: 5px; margin: 3px; min-width: 44px;"
+             "QScrollBar:horizontal { height: 14px; background: transparent; }"
+             "QScrollBar:vertical { width: 14px; background: transparent; }"
+             "QScrollBar::handle { background: %3; border-radius: 3px; margin: 4px; min-width: 44px;"
              "  min-height: 44px; }"
              "QScrollBar::add-line, QScrollBar::sub-line { width: 0; height: 0; }"
              "QScrollBar::add-page, QScrollBar::sub-page { background: transparent; }")
-      .arg(name(Role::Window), name(Role::Surface), name(Role::Raised), name(Role::Edge), name(Role::Ink),
-           name(Role::Press), name(Role::PressInk), name(Role::Focus), name(Role::InkSoft));
+      .arg(name(Role::Surface), name(Role::Raised), name(Role::Edge), name(Role::Ink), name(Role::Press),
+           name(Role::PressInk), name(Role::Focus), name(Role::InkSoft));
 }
 
 void applyTheme(QApplication& application, const Theme& theme) {

@@ -3,6 +3,7 @@
 
 #include <QHBoxLayout>
 #include <QPainter>
+#include <algorithm>
 
 #include "ui/theme/style.hpp"
 
@@ -65,7 +66,8 @@ void TopBar::setCurrentView(const QString& view) {
 
 void TopBar::refresh() {
   const QString title = QString::fromStdString(m_data.shop().title);
-  m_title->setText(title.isEmpty() ? tr("Tankward") : title);
+  const QString shown = title.isEmpty() ? tr("Tankward") : title;
+  m_title->setText(QFontMetrics(m_title->font()).elidedText(shown, Qt::ElideRight, std::max(m_title->width(), 40)));
   m_title->setToolTip(title);
   switch (m_data.link()) {
     case Link::Connecting: m_link->setText(tr("connecting\u2026")); break;
@@ -84,6 +86,8 @@ void TopBar::resizeEvent(QResizeEvent*) {
   const bool narrow = width() < kNarrow;
   m_who->setVisible(!narrow);
   m_link->setVisible(!narrow || m_data.link() != Link::Live);
+  layout()->activate();
+  refresh();
 }
 
 void TopBar::paintEvent(QPaintEvent*) {

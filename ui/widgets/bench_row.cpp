@@ -26,6 +26,7 @@ void BenchRow::setNumber(const BenchNumber& number) {
   //: name, value, limits, age
   setAccessibleName(tr("%1 %2; %3 %4; %5").arg(number.title, number.value, number.lowText, number.highText, number.age));
   setToolTip(number.tip);
+  updateGeometry();
   update();
 }
 
@@ -83,7 +84,7 @@ void BenchRow::paintEvent(QPaintEvent*) {
   painter.setPen(theme.color(Role::InkSoft));
   painter.drawText(QRect(inset, 0, room - valueWidth - 6, 21), Qt::AlignLeft | Qt::AlignVCenter,
                    QFontMetrics(titleFont).elidedText(m_number.title, Qt::ElideRight, room - valueWidth - 6));
-  const bool bar = m_number.to > m_number.from;
+  const bool bar = hasBar();
   if (bar) paintBar(painter, QRectF(inset + 1, kBarTop, room - 2, kBarHeight));
   const QRect under(inset, bar ? 43 : 22, room, 17);
   painter.setFont(textFont(kTinyPx));

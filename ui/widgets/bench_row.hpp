@@ -39,13 +39,14 @@ class BenchRow : public QWidget {
   explicit BenchRow(const Look& look, QWidget* parent = nullptr);
   void setNumber(const BenchNumber& number);
   [[nodiscard]] const BenchNumber& number() const { return m_number; }
-  [[nodiscard]] QSize sizeHint() const override { return {210, 62}; }
-  [[nodiscard]] QSize minimumSizeHint() const override { return {170, 62}; }
+  [[nodiscard]] QSize sizeHint() const override { return {210, hasBar() ? 60 : 40}; }
+  [[nodiscard]] QSize minimumSizeHint() const override { return {170, sizeHint().height()}; }
 
  protected:
   void paintEvent(QPaintEvent* event) override;
 
  private:
+  [[nodiscard]] bool hasBar() const { return m_number.to > m_number.from; }
   void paintBar(QPainter& painter, const QRectF& bar) const;
 
   const Look& m_look;

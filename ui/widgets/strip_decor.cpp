@@ -10,6 +10,7 @@ namespace tw::ui {
 namespace {
 
 constexpr int kTinyPx = 12;
+constexpr double kNameHeight = 20.0;
 
 /// Text with its ground painted behind it, so that a curve does not run through the letters.
 void label(QCPPainter* painter, const QPointF& at, Qt::Alignment side, const QString& text, const QColor& ink,
@@ -33,16 +34,19 @@ StripDecor::StripDecor(QCustomPlot* plot, QCPAxisRect* rect, const Look& look, c
     : QCPAbstractItem(plot), m_rect(rect), m_look(look), m_strip(strip), m_set(set), m_words(words),
       m_format(format), m_first(first) {
   setClipAxisRect(rect);
-  setClipToAxisRect(true);
+  setClipToAxisRect(false);  // the name stands above the curve
   setLayer(QStringLiteral("grid"));
 }
 
 void StripDecor::draw(QCPPainter* painter) {
   const QRectF box(m_rect->rect());
+  painter->save();
+  painter->setClipRect(box);
   drawFuture(painter, box);
   drawWindow(painter, box);
   drawLimits(painter, box);
   drawMarks(painter, box);
+  painter->restore();
   drawNames(painter, box);
 }
 
@@ -63,8 +67,11 @@ void StripDecor::drawLimits(QCPPainter* painter, const QRectF& box) const {
     painter->setPen(QPen(ink, limit.act ? 2.2 : 1.4));
     painter->drawLine(QPointF(box.left(), at), QPointF(box.right(), at));
     const QString name = limit.act ? m_words.act : m_words.caution;
-    const QString text = QStringLiteral("%1 %2 %3").arg(name, m_format.number(limit.value), m_strip.unit).trimmed();
-    label(painter, {box.left() + 8, at}, Qt::AlignLeft | Qt::AlignVCenter, text, ink,
+    const QString value = m_strip.unit == QLatin1String("%")    ? m_format.fixed(limit.value, 0)
+                          : m_strip.unit == QLatin1String("pH") ? m_format.fixed(limit.value, 2)
+                                                                : m_format.number(limit.value);
+    const QString text = QStringLiteral("%1 %2 %3").arg(name, value, m_strip.unit).trimmed();
+    label(painter, {box.left() + 6, at}, Qt::AlignLeft | Qt::AlignVCenter, text, ink,
           m_look.theme().color(Role::Surface));
   }
 }
@@ -83,6 +90,7 @@ void StripDecor::drawMarks(QCPPainter* painter, const QRectF& box) const {
     }
   }
   for (const AlarmSpan& span : m_set.alarms) {
+    if (x(span.to) < box.left()) continue;
     const double from = std::max(x(span.from), box.left());
     const double to = std::min(std::max(x(span.to), from + 3.0), box.right());
     if (to <= from) continue;
@@ -103,16 +111,20 @@ void StripDecor::drawFuture(QCPPainter* painter, const QRectF& box) const {
 
 void StripDecor::drawNames(QCPPainter* painter, const QRectF& box) const {
   const Theme& theme = m_look.theme();
-  const QColor ground = theme.color(Role::Surface);
+  const QRectF above(box.left(), box.top() - kNameHeight, box.width(), kNameHeight);
   painter->setFont(textFont(kSmallPx, true));
-  const QString unit = m_strip.unit.isEmpty() ? QString() : QStringLiteral(", ") + m_strip.unit;
-  label(painter, {box.left() + 6, box.top() + 8}, Qt::AlignLeft | Qt::AlignTop, m_strip.title + unit,
-        theme.color(Role::Ink), ground);
+  painter->setPen(QPen(theme.color(Role::Ink)));
+  const bool named = m_strip.unit.isEmpty() || m_strip.unit == m_strip.title;
+  painter->drawText(above, Qt::AlignLeft | Qt::AlignVCenter,
+                    named ? m_strip.title : m_strip.title + QStringLiteral(", ") + m_strip.unit);
   painter->setFont(textFont(kTinyPx));
+  painter->setPen(QPen(theme.color(Role::InkSoft)));
+  if (!m_strip.projection.empty()) {
+    painter->drawText(above, Qt::AlignRight | Qt::AlignVCenter, m_words.projection);
+  }
   const double at = x(m_set.now);
-  if (m_first && at > box.left() + 40 && at < box.right()) {
-    label(painter, {at - 3, box.top() + 8}, Qt::AlignRight | Qt::AlignTop, m_words.now, theme.color(Role::InkSoft),
-          ground);
+  if (m_first && at > box.left() && at < box.right()) {
+    painter->drawText(QRectF(at - 40, above.top(), 80, above.height()), Qt::AlignCenter, m_words.now);
   }
 }
 

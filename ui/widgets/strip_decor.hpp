@@ -14,7 +14,7 @@ namespace tw::ui {
 
 /// Words drawn by the decor, translated by the strips.
 struct DecorWords {
-  QString now, caution, act;
+  QString now, caution, act, projection;
 };
 
 /// Behind and around the curve.

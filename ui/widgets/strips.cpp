@@ -19,7 +19,8 @@ constexpr double kHour = 3600.0;
 constexpr double kDay = 24.0 * kHour;
 constexpr double kShortest = kHour;
 constexpr double kLongest = 6.0 * 366.0 * kDay;
-constexpr int kLaneHeight = 96;
+constexpr int kLaneHeight = 112;
+constexpr int kNameRoom = 22;
 constexpr int kAxisHeight = 44;
 constexpr double kAir = 0.10;            // of the height, above and below a curve
 constexpr std::size_t kDotsUpTo = 160;   // visible points; above that the line speaks alone
@@ -107,20 +108,16 @@ QSize Strips::minimumSizeHint() const {
   return {360, kLaneHeight * static_cast<int>(std::max<std::size_t>(m_parts->lanes.size(), 1)) + kAxisHeight};
 }
 
-void Strips::setStrips(const StripSet& set, bool keepRange) {
+void Strips::setStrips(const StripSet& set, const std::set<std::string>& folded, bool keepRange) {
   m_set = set;
+  m_folded = folded;
   rebuild();
   if (keepRange && m_parts->range.size() > kShortest / 2) {
     setRange(m_parts->range.lower, m_parts->range.upper);
   } else {
     setSpan(Span::Week);
   }
-}
-
-void Strips::setFolded(const std::set<std::string>& folded) {
-  m_folded = folded;
-  rebuild();
-  setRange(m_parts->range.lower, m_parts->range.upper);
+  if (m_cursor) moveCursor(m_cursor);
 }
 
 void Strips::setSpan(Span span) {
@@ -152,7 +149,11 @@ void Strips::addLane(const Strip& strip, bool first, bool last) {
   Parts::Lane lane;
   lane.strip = &strip;
   lane.rect = new QCPAxisRect(plot);
-  lane.rect->setMinimumMargins(QMargins(6, 4, 10, last ? 6 : 4));
+  for (QCPAxis* axis : lane.rect->axes()) {
+    axis->setLayer(QStringLiteral("axes"));
+    axis->grid()->setLayer(QStringLiteral("grid"));  // before the decor, which lies over it
+  }
+  lane.rect->setMinimumMargins(QMargins(6, kNameRoom, 10, last ? 6 : 4));
   lane.rect->setMinimumSize(80, 40);
   lane.rect->setRangeDrag(Qt::Horizontal);
   lane.rect->setRangeZoom(Qt::Horizontal);
@@ -175,7 +176,8 @@ void Strips::addLane(const Strip& strip, bool first, bool last) {
     setRange(time->range().lower, time->range().upper);
   });
 
-  new StripDecor(plot, lane.rect, m_look, strip, m_set, {tr("now"), tr("caution"), tr("act")}, m_format, first);
+  new StripDecor(plot, lane.rect, m_look, strip, m_set, 
+                 {tr("now"), tr("caution"), tr("act"), tr("dashed: straight line ahead")}, m_format, first);
   const QColor ink = m_look.theme().color(Role::Curve);
   lane.curve = plot->addGraph(time, level);
   lane.curve->setPen(QPen(ink, 2.0));
@@ -193,15 +195,6 @@ void Strips::addLane(const Strip& strip, bool first, bool last) {
     QCPGraph* ahead = plot->addGraph(time, level);
     ahead->setPen(QPen(ink, 2.0, Qt::DashLine));
     putPoints(ahead, strip.projection);
-    auto* name = new QCPItemText(plot);
-    name->setClipAxisRect(lane.rect);
-    name->position->setType(QCPItemPosition::ptAxisRectRatio);
-    name->position->setAxisRect(lane.rect);
-    name->position->setCoords(0.995, 0.03);
-    name->setPositionAlignment(Qt::AlignRight | Qt::AlignTop);
-    name->setFont(textFont(12));
-    name->setColor(m_look.theme().color(Role::InkSoft));
-    name->setText(tr("dashed: straight line"));
   }
   lane.cursor = new StripCursor(plot, lane.rect, m_look);
   m_parts->lanes.push_back(lane);
@@ -266,12 +259,15 @@ void Strips::fitHeights() {
     }
     const bool dots = count > 0 && count <= kDotsUpTo;
     lane.curve->setScatterStyle(dots ? QCPScatterStyle(QCPScatterStyle::ssDisc, 5.5) : QCPScatterStyle());
+    for (const StripPoint& point : lane.strip->projection) {
+      if (m_parts->range.contains(point.t)) include(point.value);
+    }
     for (const StripLimit& limit : lane.strip->limits) include(limit.value);
     if (lane.strip->low) include(*lane.strip->low);
     if (lane.strip->high) include(*lane.strip->high);
     if (count == 0) include(0.0);
     const double air = std::max((high - low) * kAir, std::max(std::abs(high) * 0.01, 1e-3));
-    lane.rect->axis(QCPAxis::atLeft)->setRange(low - air, high + air * 2.4);  // the name stands at the top
+    lane.rect->axis(QCPAxis::atLeft)->setRange(low - air, high + air);
   }
 }
 

@@ -22,10 +22,9 @@ class Strips : public QWidget {
   Strips(const Look& look, const Format& format, QWidget* parent = nullptr);
   ~Strips() override;
 
-  /// Draws another set; the visible range stays unless `keepRange` is false.
-  void setStrips(const StripSet& set, bool keepRange);
-  /// Ids of the strips that are folded away.
-  void setFolded(const std::set<std::string>& folded);
+  /// Draws another set without the strips whose ids are folded away; the visible range stays unless
+  /// `keepRange` is false.
+  void setStrips(const StripSet& set, const std::set<std::string>& folded, bool keepRange);
   void setSpan(Span span);
   [[nodiscard]] double from() const;
   [[nodiscard]] double to() const;

@@ -17,7 +17,7 @@ class TankButton : public QAbstractButton {
   void setTank(const TankLook& look);
   [[nodiscard]] const TankLook& tank() const { return m_tank; }
   [[nodiscard]] QSize sizeHint() const override { return {220, 190}; }
-  [[nodiscard]] QSize minimumSizeHint() const override { return {150, 104}; }
+  [[nodiscard]] QSize minimumSizeHint() const override { return {150, 92}; }
 
  protected:
   void paintEvent(QPaintEvent* event) override;

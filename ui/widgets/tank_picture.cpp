@@ -59,12 +59,12 @@ void paintBed(QPainter& painter, const TankShape& shape, const TankLook& look, c
   if (shape.bed.isEmpty()) return;
   const QColor ground = theme.color(Role::Surface);
   const auto condition = look.stale ? model::Condition::Stale : look.condition.value_or(model::Condition::Fine);
-  QColor ink = theme.condition(condition);
-  painter.fillRect(shape.gap, ground);
+  const QColor ink = theme.condition(condition);
+  painter.fillRect(shape.gap, theme.color(Role::Gap));
   const double spacing = std::clamp(shape.inner.width() / 26.0, 6.0, 9.0);
   if (look.condition == model::Condition::Sludging && !look.stale) {
-    painter.fillRect(shape.bed, ink);
-    paintHatch(painter, shape.bed, ground, spacing * 1.4, 1.8);
+    painter.fillRect(shape.bed, theme.color(Role::SludgingFill));
+    paintHatch(painter, shape.bed, theme.color(Role::SludgingInk), spacing * 1.4, 1.8);
     return;
   }
   painter.fillRect(shape.bed, mixed(ground, ink, 0.14));

@@ -63,8 +63,8 @@ QString Reasons::margin(const ReasonView& reason, const std::string& ligand) con
   const QString value = marginNumber(reason.subject, *reason.value);
   if (!reason.limit) return tr("%1: %2").arg(name, value);
   const QString limit = marginNumber(reason.subject, *reason.limit);
-  if (reason.word == "brink") return tr("%1 down to %2, act limit %3").arg(name, value, limit);
-  return tr("%1 down to %2, caution limit %3").arg(name, value, limit);
+  if (reason.word == "brink") return tr("%1: only %2 left, act limit %3").arg(name, value, limit);
+  return tr("%1: only %2 left, caution limit %3").arg(name, value, limit);
 }
 
 QString Reasons::outside(const ReasonView& reason, const TankView* tank, bool guard) const {
@@ -74,10 +74,10 @@ QString Reasons::outside(const ReasonView& reason, const TankView* tank, bool gu
   if (!reason.value) return tr("%1 outside its limits").arg(name);
   const QString value = m_format.quantity(reason.value, unit);
   if (!guard && channel != nullptr) {
-    const QString low = m_format.quantity(channel->low, unit);
+    const QString low = m_format.number(channel->low);
     const QString high = m_format.quantity(channel->high, unit);
-    return *reason.value < channel->low ? tr("%1 %2, below its window (%3 to %4)").arg(name, value, low, high)
-                                        : tr("%1 %2, above its window (%3 to %4)").arg(name, value, low, high);
+    return *reason.value < channel->low ? tr("%1 %2, below its window %3\u2013%4").arg(name, value, low, high)
+                                        : tr("%1 %2, above its window %3\u2013%4").arg(name, value, low, high);
   }
   if (!reason.limit) return tr("%1: %2").arg(name, value);
   const QString limit = m_format.quantity(reason.limit, unit);

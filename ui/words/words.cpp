@@ -41,13 +41,13 @@ QString Words::marginTitle(const std::string& id, const std::string& ligand) {
 }
 
 QString Words::marginShort(const std::string& id, const std::string& ligand) {
-  if (id == "ph_up") return tr("room for pH to rise");
-  if (id == "ph_down") return tr("room for pH to fall");
+  if (id == "ph_up") return tr("pH room up");
+  if (id == "ph_down") return tr("pH room down");
   if (id == "ligand_loss") return tr("%1 reserve").arg(substance(ligand));
-  if (id == "metal_gain") return tr("room for more metal");
-  if (id == "warming") return tr("room to warm");
-  if (id == "cooling") return tr("room to cool");
-  if (id == "dilution") return tr("room for water");
+  if (id == "metal_gain") return tr("metal room");
+  if (id == "warming") return tr("warming room");
+  if (id == "cooling") return tr("cooling room");
+  if (id == "dilution") return tr("dilution room");
   return QString::fromStdString(id);
 }
 

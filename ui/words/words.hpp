@@ -24,7 +24,7 @@ class Words {
 
   /// "pH may rise by", "ammonia that may be lost" ... `ligand` is a formula or empty.
   [[nodiscard]] static QString marginTitle(const std::string& id, const std::string& ligand);
-  /// Short, for axes and lists: "pH up", "ammonia reserve".
+  /// Short, for axes and lists: "pH room up", "ammonia reserve".
   [[nodiscard]] static QString marginShort(const std::string& id, const std::string& ligand);
   /// Unit of the judged number: "%" (of a fraction), "pH", "K", or "times".
   [[nodiscard]] static bool marginIsFraction(const std::string& id);

@@ -34,9 +34,13 @@ void Legend::paintEvent(QPaintEvent*) {
   double x = 16.0;
   const double middle = height() / 2.0;
   const auto entry = [&](const QString& text, const std::function<void(const QRectF&)>& mark) {
+    const double width = painter.fontMetrics().horizontalAdvance(text);
+    if (x + kMark + kGap + width > this->width()) {  // what does not fit whole stands in the tooltip
+      x = this->width();
+      return;
+    }
     mark(QRectF(x, middle - kMark / 2, kMark, kMark));
     x += kMark + kGap;
-    const double width = painter.fontMetrics().horizontalAdvance(text);
     painter.setPen(theme.color(Role::InkSoft));
     painter.drawText(QRectF(x, 0, width + 2, height()), Qt::AlignVCenter | Qt::AlignLeft, text);
     x += width + kBetween;

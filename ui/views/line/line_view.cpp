@@ -2,6 +2,7 @@
 #include "ui/views/line/line_view.hpp"
 
 #include <QHBoxLayout>
+#include <QPainter>
 #include <algorithm>
 
 #include "ui/theme/style.hpp"
@@ -10,7 +11,7 @@
 namespace tw::ui {
 namespace {
 
-constexpr int kRowHeight = 352;  // the least at which a tank is still read from two metres
+constexpr int kRowHeight = 264;  // the least at which a tank is still read from two metres
 
 /// Line and tank ids in order: when they are the same, the rows stay.
 std::vector<std::string> layoutKey(const std::vector<io::wire::TankView>& tanks) {
@@ -33,14 +34,39 @@ class RowScroll : public QScrollArea {
   }
 };
 
+/// The line's name, read from the floor to the crane: it takes no height from the tanks.
+class LineSign : public QWidget {
+ public:
+  LineSign(const Look& look, const QString& title) : m_look(look), m_title(title) {
+    setFixedWidth(30);
+    setAccessibleName(title);
+    setToolTip(title);
+  }
+
+ protected:
+  void paintEvent(QPaintEvent*) override {
+    QPainter painter(this);
+    painter.fillRect(rect().adjusted(0, 0, -2, 0), m_look.theme().color(Role::Raised));
+    painter.setFont(textFont(14, true));
+    painter.setPen(m_look.theme().color(Role::InkSoft));
+    painter.translate(0, height());
+    painter.rotate(-90);
+    painter.drawText(QRect(0, 0, height(), width() - 2), Qt::AlignCenter, m_title);
+  }
+
+ private:
+  const Look& m_look;
+  QString m_title;
+};
+
 }  // namespace
 
 LineView::LineView(const Look& look, const ShopData& shopData, const Format& format, QWidget* parent)
     : QWidget(parent), m_look(look), m_data(shopData), m_format(format),
       m_strip(new AttentionStrip(look, shopData, format)), m_lines(new QVBoxLayout) {
   m_strip->setFixedHeight(132);
-  m_lines->setContentsMargins(0, 10, 0, 4);
-  m_lines->setSpacing(14);
+  m_lines->setContentsMargins(0, 6, 0, 2);
+  m_lines->setSpacing(8);
   auto* inside = new QWidget;
   inside->setLayout(m_lines);
   auto* scroll = new QScrollArea;
@@ -103,19 +129,15 @@ QWidget* LineView::lineRow(const std::string& line, const QString& title) {
     connect(card, &TankCard::tankOpened, this, &LineView::tankOpened);
     connect(card, &TankCard::acknowledgeWanted, this, &LineView::acknowledgeWanted);
     m_cards.push_back(card);
-    row->addWidget(card);
+    row->addWidget(card, 100);
   }
   row->addStretch(1);
-  auto* heading = new QLabel(title);
-  heading->setFont(textFont(14, true));
-  heading->setForegroundRole(QPalette::PlaceholderText);
-  heading->setContentsMargins(18, 0, 0, 0);
   auto* whole = new QWidget;
-  auto* column = new QVBoxLayout(whole);
-  column->setContentsMargins(0, 0, 0, 0);
-  column->setSpacing(4);
-  column->addWidget(heading);
-  column->addWidget(new RowScroll(cards), 1);
+  auto* beside = new QHBoxLayout(whole);
+  beside->setContentsMargins(0, 0, 0, 0);
+  beside->setSpacing(0);
+  beside->addWidget(new LineSign(m_look, title));
+  beside->addWidget(new RowScroll(cards), 1);
   return whole;
 }
 

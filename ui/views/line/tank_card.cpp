@@ -11,8 +11,9 @@
 namespace tw::ui {
 namespace {
 
-constexpr int kCardWidth = 232;
-constexpr int kReasonLines = 3;
+constexpr int kNarrowest = 216;
+constexpr int kWidest = 310;
+constexpr int kReasonLines = 2;
 
 }  // namespace
 
@@ -32,16 +33,12 @@ TankCard::TankCard(const Look& look, const ShopData& shopData, const Format& for
                    QWidget* parent)
     : QWidget(parent), m_data(shopData), m_format(format), m_id(std::move(tank)), m_title(new QLabel),
       m_age(new QLabel), m_picture(new TankButton(look)), m_condition(new ConditionLabel(look)),
-      m_reason(new QLabel), m_help(new QPushButton) {
-  setFixedWidth(kCardWidth);
+      m_reason(new WrapText(look, 14, kReasonLines)), m_help(new QPushButton) {
+  setMinimumWidth(kNarrowest);
+  setMaximumWidth(kWidest);
   m_title->setFont(textFont(17, true));
   m_age->setFont(textFont(kSmallPx));
   m_age->setForegroundRole(QPalette::PlaceholderText);
-  m_reason->setFont(textFont(14));
-  m_reason->setWordWrap(true);
-  m_reason->setAlignment(Qt::AlignLeft | Qt::AlignTop);
-  m_reason->setFixedHeight(QFontMetrics(m_reason->font()).lineSpacing() * kReasonLines + 2);
-
   auto* words = new QVBoxLayout;
   words->setContentsMargins(14, 0, 14, 0);
   words->setSpacing(4);
@@ -55,7 +52,7 @@ TankCard::TankCard(const Look& look, const ShopData& shopData, const Format& for
   top->addWidget(m_age);
   auto* all = new QVBoxLayout(this);
   all->setContentsMargins(0, 0, 0, 0);
-  all->setSpacing(6);
+  all->setSpacing(4);
   all->addLayout(top);
   all->addWidget(m_picture, 1);
   all->addLayout(words);
@@ -99,7 +96,6 @@ void TankCard::refresh() {
 
   m_condition->setCondition(tank->inService ? look.condition : std::nullopt, word, tank->stale);
   m_reason->setText(reason);
-  m_reason->setToolTip(reason);
   m_now = Entries(m_data, m_format).helpFor(*tank);
   m_help->setText(m_now.text);
   m_help->setAccessibleName(tr("%1: %2").arg(title, m_now.text));

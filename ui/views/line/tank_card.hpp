@@ -10,6 +10,7 @@
 #include "ui/views/line/entries.hpp"
 #include "ui/widgets/condition_label.hpp"
 #include "ui/widgets/tank_button.hpp"
+#include "ui/widgets/wrap_text.hpp"
 
 namespace tw::ui {
 
@@ -43,7 +44,7 @@ class TankCard : public QWidget {
   QLabel* m_age;
   TankButton* m_picture;
   ConditionLabel* m_condition;
-  QLabel* m_reason;
+  WrapText* m_reason;
   QPushButton* m_help;
 };
 

@@ -21,7 +21,8 @@ constexpr int kPanelWidth = 312;
 AnalysisPanel::AnalysisPanel(const Look& look, const Format& format, QWidget* parent)
     : QFrame(parent), m_look(look), m_format(format), m_when(new QLabel), m_condition(new ConditionLabel(look)),
       m_numbers(new QLabel), m_sharesTitle(new QLabel), m_shares(new ShareBars(look)), m_solids(new QLabel) {
-  setFixedWidth(kPanelWidth);
+  setMinimumWidth(kPanelWidth);
+  setMaximumWidth(kPanelWidth);
   m_when->setFont(textFont(16, true));
   m_when->setWordWrap(true);
   m_sharesTitle->setFont(textFont(14, true));

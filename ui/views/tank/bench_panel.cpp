@@ -53,7 +53,7 @@ void LargeTank::paintEvent(QPaintEvent*) {
 }
 
 BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format& format, QWidget* parent)
-    : QWidget(parent), m_look(look), m_data(shopData), m_format(format), m_title(new QLabel), m_recipe(new QLabel),
+    : QWidget(parent), m_look(look), m_data(shopData), m_format(format), m_inside(new QWidget), m_title(new QLabel), m_recipe(new QLabel),
       m_condition(new ConditionLabel(look)), m_age(new QLabel), m_reason(new QLabel),
       m_acknowledge(new QPushButton(tr("acknowledge alarm\u2026"))), m_picture(new LargeTank(look)),
       m_notes(new QLabel), m_mind(new QPushButton), m_cautions(new QLabel), m_left(new QVBoxLayout), m_right(new QVBoxLayout) {
@@ -91,15 +91,14 @@ BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format&
   auto* columns = new QHBoxLayout;
   columns->setSpacing(14);
   for (QVBoxLayout* column : {m_left, m_right}) {
-    column->setSpacing(4);
+    column->setSpacing(2);
     column->setContentsMargins(0, 0, 0, 0);
     column->addStretch(1);
     columns->addLayout(column, 1);
   }
-  auto* inside = new QWidget;
-  auto* whole = new QVBoxLayout(inside);
+  auto* whole = new QVBoxLayout(m_inside);
   whole->setContentsMargins(16, 10, 12, 10);
-  whole->setSpacing(8);
+  whole->setSpacing(6);
   whole->addLayout(head);
   whole->addLayout(state);
   whole->addWidget(m_reason);
@@ -110,7 +109,7 @@ BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format&
   whole->addWidget(m_mind);
   whole->addWidget(m_cautions);
   auto* scroll = new QScrollArea;
-  scroll->setWidget(inside);
+  scroll->setWidget(m_inside);
   scroll->setWidgetResizable(true);
   scroll->setFrameShape(QFrame::NoFrame);
   scroll->setFocusPolicy(Qt::NoFocus);

@@ -24,7 +24,7 @@ class LargeTank : public QWidget {
   explicit LargeTank(const Look& look, QWidget* parent = nullptr);
   void setTank(const TankLook& look);
   [[nodiscard]] QSize sizeHint() const override { return {420, 200}; }
-  [[nodiscard]] QSize minimumSizeHint() const override { return {300, 150}; }
+  [[nodiscard]] QSize minimumSizeHint() const override { return {300, 140}; }
 
  protected:
   void paintEvent(QPaintEvent* event) override;
@@ -41,6 +41,8 @@ class BenchPanel : public QWidget {
   BenchPanel(const Look& look, const ShopData& shopData, const Format& format, QWidget* parent = nullptr);
   void setTank(const std::string& tank);
   void refresh();
+  /// Height at which nothing has to scroll.
+  [[nodiscard]] int contentHeight() const { return m_inside->sizeHint().height(); }
 
  Q_SIGNALS:
   void acknowledgeWanted(qint64 alarm);
@@ -57,6 +59,7 @@ class BenchPanel : public QWidget {
   const Format& m_format;
   std::string m_id;
   std::int64_t m_alarm = 0;
+  QWidget* m_inside;
   QLabel* m_title;
   QLabel* m_recipe;
   ConditionLabel* m_condition;

@@ -13,6 +13,9 @@ namespace tw::ui {
 namespace {
 
 constexpr int kBenchWidth = 452;
+constexpr int kBenchLeast = 410;
+constexpr int kNarrow = 940;
+constexpr int kSideHeight = 640;
 constexpr qint64 kFirstDays = 35;
 constexpr int kRedrawSoon_ms = 150;
 constexpr qint64 kSecondsPerDay = 86400;
@@ -32,17 +35,26 @@ TankView::TankView(const Look& look, const ShopData& shopData, ApiClient& client
     : QWidget(parent), m_data(shopData), m_client(client), m_format(format),
       m_bench(new BenchPanel(look, shopData, format)), m_margins(new QComboBox), m_folds(new QWidget),
       m_strips(new Strips(look, format)), m_trouble(new QLabel), m_analysis(new AnalysisPanel(look, format)) {
-  m_bench->setMaximumWidth(kBenchWidth);
-  m_bench->setMinimumWidth(300);
   m_analysis->hide();
   m_soon.setSingleShot(true);
   m_soon.setInterval(kRedrawSoon_ms);
-  auto* all = new QHBoxLayout(this);
+  auto* content = new QWidget;
+  m_panes = new QBoxLayout(QBoxLayout::LeftToRight, content);
+  m_panes->setContentsMargins(0, 0, 0, 0);
+  m_panes->setSpacing(0);
+  m_side = stripSide();
+  m_panes->addWidget(m_bench, 4);
+  m_panes->addWidget(m_side, 8);
+  m_panes->addWidget(m_analysis);
+  auto* scroll = new QScrollArea;
+  scroll->setWidget(content);
+  scroll->setWidgetResizable(true);
+  scroll->setFrameShape(QFrame::NoFrame);
+  scroll->setFocusPolicy(Qt::NoFocus);
+  scroll->setHorizontalScrollBarPolicy(Qt::ScrollBarAlwaysOff);
+  auto* all = new QVBoxLayout(this);
   all->setContentsMargins(0, 0, 0, 0);
-  all->setSpacing(0);
-  all->addWidget(m_bench, 4);
-  all->addWidget(stripSide(), 8);
-  all->addWidget(m_analysis);
+  all->addWidget(scroll);
 
   connect(&m_soon, &QTimer::timeout, this, &TankView::redraw);
   connect(m_bench, &BenchPanel::acknowledgeWanted, this, &TankView::acknowledgeWanted);
@@ -60,11 +72,21 @@ TankView::TankView(const Look& look, const ShopData& shopData, ApiClient& client
   connect(&shopData, &ShopData::tankChanged, this, [this](const std::string& id) {
     if (id == m_id) refreshAges();
   });
-  connect(&shopData, &ShopData::tanksChanged, this, &TankView::refreshAges);
-  connect(&shopData, &ShopData::alarmsChanged, this, &TankView::refreshAges);
+  connect(&shopData, &ShopData::tanksChanged, m_bench, &BenchPanel::refresh);
+  connect(&shopData, &ShopData::alarmsChanged, this, &TankView::takeAlarms);
   connect(&shopData, &ShopData::resultArrived, this, &TankView::takeResult);
   connect(&shopData, &ShopData::readingArrived, this, &TankView::takeReading);
   listenToClient();
+}
+
+void TankView::resizeEvent(QResizeEvent*) {
+  // A small screen, or a large one at 200 %: the panes stand one above the other and scroll together.
+  const bool narrow = width() < kNarrow;
+  m_panes->setDirection(narrow ? QBoxLayout::TopToBottom : QBoxLayout::LeftToRight);
+  m_bench->setMinimumWidth(narrow ? 0 : kBenchLeast);
+  m_bench->setMaximumWidth(narrow ? QWIDGETSIZE_MAX : kBenchWidth);
+  m_bench->setMinimumHeight(narrow ? m_bench->contentHeight() : 0);
+  m_side->setMinimumHeight(narrow ? kSideHeight : 0);
 }
 
 QWidget* TankView::spanRow() {
@@ -89,7 +111,8 @@ QWidget* TankView::spanRow() {
                             "\u00B7 hollow: corrected"));
   key->setFont(textFont(kSmallPx));
   key->setForegroundRole(QPalette::PlaceholderText);
-  key->setWordWrap(true);
+  key->setSizePolicy(QSizePolicy::Ignored, QSizePolicy::Preferred);
+  key->setToolTip(key->text());
   layout->addWidget(key, 1);
   return row;
 }
@@ -198,7 +221,7 @@ void TankView::fillMargins(const io::wire::TankView& tank) {
   m_margins->setVisible(m_margins->count() > 0);
 }
 
-void TankView::fillFolds(const StripSet& set) {
+std::set<std::string> TankView::fillFolds(const StripSet& set) {
   std::set<std::string> folded;
   for (auto& [id, button] : m_foldButtons) button->hide();
   for (const Strip& strip : set.strips) {
@@ -221,7 +244,7 @@ void TankView::fillFolds(const StripSet& set) {
     button->setChecked(!away);
     button->show();
   }
-  m_strips->setFolded(folded);
+  return folded;
 }
 
 void TankView::redraw() {
@@ -229,8 +252,7 @@ void TankView::redraw() {
   if (tank == nullptr) return;
   if (m_margins->count() != static_cast<int>(tank->margins.size())) fillMargins(*tank);
   const StripSet set = History(m_format).strips(*tank, m_history, m_margin, m_data.now());
-  m_strips->setStrips(set, !m_fresh);
-  fillFolds(set);
+  m_strips->setStrips(set, fillFolds(set), !m_fresh);
   m_fresh = false;
   m_drawn = true;
 }
@@ -268,6 +290,14 @@ void TankView::takeReading(const io::wire::ReadingView& reading) {
   }
   upsert(m_history.readings, reading);
   m_soon.start();
+}
+
+void TankView::takeAlarms() {
+  for (const io::wire::AlarmView& alarm : m_data.alarms()) {
+    std::erase_if(m_history.alarms, [&](const auto& known) { return known.id == alarm.id; });
+    m_history.alarms.push_back(alarm);
+  }
+  refreshAges();
 }
 
 }  // namespace tw::ui

@@ -2,10 +2,12 @@
 // One tank: the bench on the left, strips over time on the right, the analysis of a point beside them.
 #pragma once
 
+#include <QBoxLayout>
 #include <QComboBox>
 #include <QLabel>
 #include <QPushButton>
 #include <QTimer>
+#include <QScrollArea>
 #include <QWidget>
 #include <map>
 #include <set>
@@ -38,6 +40,9 @@ class TankView : public QWidget {
   void acknowledgeWanted(qint64 alarm);
   void stepWanted(int by);
 
+ protected:
+  void resizeEvent(QResizeEvent* event) override;
+
  private:
   enum Part : unsigned { kResults = 1, kReadings = 2, kEvents = 4, kAlarms = 8, kAll = 15 };
 
@@ -47,12 +52,14 @@ class TankView : public QWidget {
   void askSince(const QDateTime& since);
   void arrived(Part part);
   void redraw();
-  void fillFolds(const StripSet& set);
+  /// Brings the fold buttons up to date; answers the ids that are folded away.
+  std::set<std::string> fillFolds(const StripSet& set);
   void fillMargins(const io::wire::TankView& tank);
   void rangeShown(double from);
   void chooseResult(qint64 id, const std::string& sampledAt);
   void takeResult(const io::wire::ResultView& result);
   void takeReading(const io::wire::ReadingView& reading);
+  void takeAlarms();
 
   const ShopData& m_data;
   ApiClient& m_client;
@@ -66,6 +73,8 @@ class TankView : public QWidget {
   qint64 m_chosen = 0;
   QTimer m_soon;                           ///< several pushes make one redraw
 
+  QBoxLayout* m_panes;
+  QWidget* m_side;
   BenchPanel* m_bench;
   QComboBox* m_margins;
   QWidget* m_folds;
