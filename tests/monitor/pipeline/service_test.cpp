@@ -1,7 +1,10 @@
 // SPDX-License-Identifier: GPL-3.0-or-later
 // The whole chain with real files, store, threads and sockets; only the clock is false.
+#include <fcntl.h>
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
+#include <stdlib.h>
+#include <unistd.h>
 
 #include <filesystem>
 
@@ -193,6 +196,58 @@ TEST_F(Alarming, JudgesWhatACorrectionLeaves) {
   EXPECT_EQ(alarm("window", "ammonia")["state"], "returned_unacknowledged");
   EXPECT_EQ(resultCount(m_service->port()), 1U);
   EXPECT_EQ(post(m_service->port(), path, R"({"value":86,"operator":"lt","reason":"again"})").status, 409);
+}
+
+/// The far end of a serial line: a pseudo terminal whose name the service opens.
+class Instrument {
+ public:
+  Instrument() : m_fd(::posix_openpt(O_RDWR | O_NOCTTY)) {
+    if (m_fd < 0 || ::grantpt(m_fd) != 0 || ::unlockpt(m_fd) != 0) throw std::runtime_error("no pseudo terminal");
+    m_port = ::ptsname(m_fd);
+  }
+  ~Instrument() { unplug(); }
+  Instrument(const Instrument&) = delete;
+  Instrument& operator=(const Instrument&) = delete;
+  [[nodiscard]] const std::string& port() const { return m_port; }
+  void say(const std::string& line) const {
+    ASSERT_EQ(::write(m_fd, line.data(), line.size()), static_cast<ssize_t>(line.size()));
+  }
+  void unplug() {
+    if (m_fd >= 0) ::close(m_fd);
+    m_fd = -1;
+  }
+
+ private:
+  int m_fd;
+  std::string m_port;
+};
+
+TEST(Service, ReadsAnInstrumentAndAlarmsWhenItIsUnplugged) {
+  Instrument instrument;
+  TempShop shop("\n[[serial]]\nport = \"" + instrument.port() +
+                "\"\nbaud = 9600\ntank = \"T1\"\nframe = \"named\"\nevery_s = 0\n");
+  FakeClock clock("2026-03-02T07:00:00Z");
+  RunningService service(shop, clock);
+  const auto readings = [&] { return get(service.port(), "/api/v1/tanks/T1/readings").json(); };
+  ASSERT_TRUE(waitUntil([&] {
+    instrument.say("ph=10.21 temperature=41.5\r\n");
+    return readings().size() >= 2;
+  }));
+  EXPECT_EQ(readings()[0]["source"], "serial:" + instrument.port());
+  instrument.unplug();
+  ASSERT_TRUE(waitUntil([&] {
+    const json seen = tank(service.port(), "T1");
+    for (const json& reason : seen["reasons"]) {
+      if (reason["code"] == "link" && reason["subject"] == instrument.port()) return true;
+    }
+    return false;
+  }));
+  ASSERT_TRUE(service.settle());
+  bool alarmed = false;
+  for (const json& alarm : get(service.port(), "/api/v1/alarms").json()) {
+    alarmed = alarmed || (alarm["kind"] == "link" && alarm["tank"] == "T1" && alarm["priority"] == "medium");
+  }
+  EXPECT_TRUE(alarmed);
 }
 
 TEST(Service, RefusesToStartTwiceOnOneStore) {
