@@ -222,7 +222,8 @@ class Judge {
       m_out.readings.push_back(std::move(row));
       return;
     }
-    auto& sames = m_seen[{row.tank, row.sampledAt.at, row.channel}];
+    // An export holds a suspicious row and its confirmation: the same number twice, in two states.
+    auto& sames = m_seen[{row.tank, row.sampledAt.at, row.channel, row.state}];
     for (const double value : sames) {
       if (sameValue(value, *row.value)) {
         ++m_out.duplicates;
@@ -281,7 +282,7 @@ class Judge {
   IntakeOutcome m_out;
   std::vector<std::optional<NewReading>> m_rows;   ///< by position in the batch
   std::map<Key, io::ChannelValues> m_values;       ///< what this batch says of each liquor, canonical
-  std::map<std::tuple<std::string, io::Instant, std::string>, std::vector<double>> m_seen;
+  std::map<std::tuple<std::string, io::Instant, std::string, io::ReadingState>, std::vector<double>> m_seen;
 };
 
 }  // namespace
