@@ -26,8 +26,8 @@ namespace tw::ui {
 /// Times of the client, ms. The defaults show a lost service within 2 s.
 struct ClientTimes {
   int answer_ms = 8000;      ///< an ordinary answer
-  int silence_ms = 1500;     ///< without any sign of life the service counts as lost
-  int pulse_ms = 500;        ///< how often a sign of life is asked for
+  int silence_ms = 1400;     ///< without any sign of life the service counts as lost
+  int pulse_ms = 300;        ///< how often a sign of life is asked for
   int retryFirst_ms = 250;
   int retryMost_ms = 4000;
 };

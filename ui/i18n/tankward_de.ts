@@ -167,6 +167,10 @@
         <translation>Alarm quittieren …</translation>
     </message>
     <message>
+        <source>read %1</source>
+        <translation>ablesen: %1</translation>
+    </message>
+    <message>
         <source>titrate %1</source>
         <translation>titrieren: %1</translation>
     </message>
@@ -535,6 +539,14 @@
     <message>
         <source>cadmium</source>
         <translation>Cadmium</translation>
+    </message>
+    <message>
+        <source>pH</source>
+        <translation>pH</translation>
+    </message>
+    <message>
+        <source>Temperature</source>
+        <translation>Temperatur</translation>
     </message>
     <message>
         <source>addition</source>

@@ -56,6 +56,7 @@ void BenchRow::paintBar(QPainter& painter, const QRectF& bar) const {
     }
   }
   for (const BenchNumber::Mark& mark : m_number.marks) {
+    if (mark.at < m_number.from || mark.at > m_number.to) continue;
     painter.setPen(QPen(theme.color(mark.role), 2.0));
     painter.drawLine(QPointF(x(mark.at), bar.top() - 2), QPointF(x(mark.at), bar.bottom() + 2));
   }

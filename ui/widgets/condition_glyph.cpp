@@ -81,8 +81,8 @@ GlyphShape glyphShape(const QRectF& area, model::Condition condition) {
   shape.vessel = QRectF(corner.x() + side * 0.14, corner.y() + side * 0.1, side * 0.7, side * 0.8);
   const double inset = shape.doubled ? shape.line * 2.4 : shape.line * 0.5;
   const QRectF inner = shape.vessel.adjusted(inset, 0, -inset, -inset);
-  const double height = inner.height() * bedShare(condition);
-  shape.bed = QRectF(inner.left(), inner.bottom() - height, inner.width(), height);
+  const double top = shape.vessel.bottom() - shape.vessel.height() * bedShare(condition);
+  shape.bed = QRectF(QPointF(inner.left(), top), inner.bottomRight());
   shape.notchY = shape.vessel.top() + shape.vessel.height() * kNotchHeight;
   return shape;
 }

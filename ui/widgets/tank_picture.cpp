@@ -4,6 +4,7 @@
 #include <QPainter>
 #include <QPainterPath>
 #include <algorithm>
+#include <cmath>
 
 #include "ui/theme/contrast.hpp"
 #include "ui/theme/style.hpp"
@@ -17,6 +18,7 @@ constexpr double kFootHeight = 9.0;   // px: what the tank stands on
 constexpr double kPaledShare = 0.30;  // how much of the liquor's colour a stale picture keeps
 constexpr double kSlimmest = 3.0;     // px: a bed that exists is seen
 constexpr int kWordsWidth = 104;      // px beside the large picture
+constexpr double kNoChange = 0.02;    // a mark closer than this to the bed says nothing new
 constexpr double kTallest = 0.86;     // height of a tank to its width, at most
 
 QPainterPath vesselPath(const TankShape& shape) {
@@ -81,7 +83,8 @@ void paintBed(QPainter& painter, const TankShape& shape, const TankLook& look, c
 }
 
 void paintHorizon(QPainter& painter, const TankShape& shape, const TankLook& look, const Theme& theme) {
-  if (!look.bedAtHorizon || shape.bed.isEmpty()) return;
+  if (!look.bedAtHorizon || shape.bed.isEmpty() || look.condition == model::Condition::Sludging) return;
+  if (look.bed && std::abs(*look.bedAtHorizon - *look.bed) < kNoChange) return;
   const double y = shape.yOf(std::clamp(*look.bedAtHorizon, 0.02, 1.0));
   const QLineF mark(shape.inner.left() + 2, y, shape.inner.right() - 2, y);
   painter.setPen(QPen(theme.color(Role::Surface), 4.0));  // a halo, so that it shows on any liquor

@@ -72,7 +72,14 @@ QString Words::substance(const std::string& formula) {
   if (bare == "Ag") return tr("silver");
   if (bare == "Sn") return tr("tin");
   if (bare == "Cd") return tr("cadmium");
-  return formulaText(formula);
+  return formulaText(bare);  // a charge says nothing on a button
+}
+
+QString Words::channelShort(const std::string& id, const std::string& title) {
+  if (id == "ph") return tr("pH");
+  if (id == "temperature") return tr("Temperature");
+  if (title.empty()) return QString::fromStdString(id);
+  return QString::fromStdString(title.substr(0, title.find(',')));
 }
 
 QString Words::event(const std::string& code) {

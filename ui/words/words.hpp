@@ -31,6 +31,8 @@ class Words {
 
   /// Everyday name of a ligand or metal: NH3 -> "ammonia"; the formula itself when we have no word.
   [[nodiscard]] static QString substance(const std::string& formula);
+  /// A channel's name where room is short: "pH", "temperature", and titles without their ", as NH3".
+  [[nodiscard]] static QString channelShort(const std::string& id, const std::string& title);
   /// "addition", "dump", ...
   [[nodiscard]] static QString event(const std::string& code);
   [[nodiscard]] static QString priority(const std::string& code);

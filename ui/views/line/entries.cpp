@@ -22,9 +22,10 @@ int rank(model::Condition condition) {
   return 5;
 }
 
-QString dueText(const DueView& due) {
-  return QString::fromStdString(due.title.empty() ? due.channel : due.title);
-}
+QString dueText(const DueView& due) { return Words::channelShort(due.channel, due.title); }
+
+/// Read off an instrument; everything else is titrated or otherwise analysed.
+bool isRead(const std::string& channel) { return channel == "ph" || channel == "temperature"; }
 
 }  // namespace
 
@@ -87,7 +88,8 @@ TankHelp Entries::helpFor(const io::wire::TankView& tank) const {
     }
     for (const DueView& due : m_data.due()) {
       if (due.tank == tank.id && due.overdue) {
-        return {TankHelp::Kind::Titrate, tr("titrate %1").arg(dueText(due)), 0};
+        const QString text = isRead(due.channel) ? tr("read %1") : tr("titrate %1");
+        return {TankHelp::Kind::Titrate, text.arg(dueText(due)), 0};
       }
     }
   }

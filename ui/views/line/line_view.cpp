@@ -11,7 +11,7 @@
 namespace tw::ui {
 namespace {
 
-constexpr int kRowHeight = 264;  // the least at which a tank is still read from two metres
+constexpr int kRowHeight = 260;  // the least at which a tank is still read from two metres
 
 /// Line and tank ids in order: when they are the same, the rows stay.
 std::vector<std::string> layoutKey(const std::vector<io::wire::TankView>& tanks) {

@@ -4,6 +4,7 @@
 #include <QHBoxLayout>
 #include <QStyle>
 #include <QVBoxLayout>
+#include <algorithm>
 
 #include "ui/theme/style.hpp"
 #include "ui/words/words.hpp"
@@ -22,8 +23,8 @@ TankLook lookOf(const io::wire::TankView& tank) {
   look.bed = tank.bed;
   look.liquor = QColor(QString::fromStdString(tank.liquorColor));
   look.condition = Words::conditionOf(tank);
-  look.stale = look.condition == model::Condition::Stale;
   look.inService = tank.inService;
+  look.stale = tank.inService && look.condition == model::Condition::Stale;
   look.doubtful = tank.doubtful || !tank.reliable;
   if (tank.projection) look.bedAtHorizon = tank.projection->bedAtHorizon;
   return look;
@@ -70,6 +71,20 @@ void TankCard::press() {
   }
 }
 
+void TankCard::placeHelpText() {
+  constexpr int kPadding = 34;
+  QFont font = m_help->font();
+  font.setBold(true);
+  m_help->setText(QFontMetrics(font).elidedText(m_now.text, Qt::ElideRight, std::max(m_help->width() - kPadding, 60)));
+  m_help->setToolTip(m_now.text);
+}
+
+void TankCard::resizeEvent(QResizeEvent* event) {
+  QWidget::resizeEvent(event);
+  layout()->activate();
+  placeHelpText();
+}
+
 void TankCard::refresh() {
   const io::wire::TankView* tank = m_data.tank(m_id);
   if (tank == nullptr) return;
@@ -94,10 +109,10 @@ void TankCard::refresh() {
   m_picture->setToolTip(used);
   m_picture->setAccessibleName(tr("Open %1: %2, %3, %4, %5").arg(title, word, used, reason, age));
 
-  m_condition->setCondition(tank->inService ? look.condition : std::nullopt, word, tank->stale);
+  m_condition->setCondition(tank->inService ? look.condition : std::nullopt, word, tank->inService && tank->stale);
   m_reason->setText(reason);
   m_now = Entries(m_data, m_format).helpFor(*tank);
-  m_help->setText(m_now.text);
+  placeHelpText();
   m_help->setAccessibleName(tr("%1: %2").arg(title, m_now.text));
   const bool primary = m_now.kind != TankHelp::Kind::OpenTank;
   if (m_help->property("primary").toBool() != primary) {

@@ -33,8 +33,12 @@ class TankCard : public QWidget {
   void tankOpened(const std::string& tank);
   void acknowledgeWanted(qint64 alarm);
 
+ protected:
+  void resizeEvent(QResizeEvent* event) override;
+
  private:
   void press();
+  void placeHelpText();
 
   const ShopData& m_data;
   const Format& m_format;

@@ -63,13 +63,16 @@ BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format&
   m_age->setFont(textFont(kSmallPx));
   m_age->setForegroundRole(QPalette::PlaceholderText);
   m_age->setAlignment(Qt::AlignRight | Qt::AlignVCenter);
+  m_age->setWordWrap(true);
   m_reason->setWordWrap(true);
+  for (QLabel* label : {m_title, m_recipe, m_age}) label->setSizePolicy(QSizePolicy::Ignored, QSizePolicy::Preferred);
   m_notes->setFont(textFont(kSmallPx));
   m_notes->setWordWrap(true);
   m_cautions->setFont(textFont(kSmallPx));
   m_cautions->setWordWrap(true);
   m_cautions->hide();
   m_mind->setCheckable(true);
+  m_mind->setSizePolicy(QSizePolicy::Ignored, QSizePolicy::Fixed);
   m_condition->setGlyphSize(36);
   m_acknowledge->setProperty("primary", true);
 
@@ -91,7 +94,7 @@ BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format&
   auto* columns = new QHBoxLayout;
   columns->setSpacing(14);
   for (QVBoxLayout* column : {m_left, m_right}) {
-    column->setSpacing(2);
+    column->setSpacing(6);
     column->setContentsMargins(0, 0, 0, 0);
     column->addStretch(1);
     columns->addLayout(column, 1);
@@ -124,6 +127,12 @@ BenchPanel::BenchPanel(const Look& look, const ShopData& shopData, const Format&
   connect(m_acknowledge, &QPushButton::clicked, this, [this] { Q_EMIT acknowledgeWanted(m_alarm); });
 }
 
+int BenchPanel::contentHeight() const {
+  m_inside->layout()->activate();
+  const int byWidth = m_inside->layout()->totalHeightForWidth(width());
+  return std::max(m_inside->sizeHint().height(), byWidth) + 2;
+}
+
 void BenchPanel::setTank(const std::string& tank) {
   m_id = tank;
   refresh();
@@ -131,7 +140,7 @@ void BenchPanel::setTank(const std::string& tank) {
 
 BenchNumber BenchPanel::channelNumber(const io::wire::ChannelView& channel) const {
   BenchNumber number;
-  number.title = QString::fromStdString(channel.title.empty() ? channel.id : channel.title);
+  number.title = Words::channelShort(channel.id, channel.title);
   number.value = m_format.quantity(channel.value, channel.unit);
   const QDateTime at = instant(channel.sampledAt);
   number.age = channel.ratio && !at.isValid() ? QString() : m_format.age(at, m_data.now());
@@ -163,7 +172,7 @@ BenchNumber BenchPanel::channelNumber(const io::wire::ChannelView& channel) cons
     number.pressing = true;
   }
   number.tip = tr("%1: sampled %2; window %3 to %4, target %5")
-                   .arg(number.title, m_format.clockWithOffset(at), m_format.quantity(channel.low, channel.unit),
+                   .arg(QString::fromStdString(channel.title), m_format.clockWithOffset(at), m_format.quantity(channel.low, channel.unit),
                         m_format.quantity(channel.high, channel.unit), m_format.quantity(channel.target, channel.unit));
   if (due.isValid()) number.tip += QLatin1Char('\n') + tr("due %1").arg(m_format.clockWithOffset(due));
   return number;
@@ -182,7 +191,9 @@ BenchNumber BenchPanel::marginNumber(const io::wire::MarginView& margin, const i
     number.from = 0.0;
     number.to = margin.limit->caution * kFullMargin;
     number.marks = {{margin.limit->act, Role::Act}, {margin.limit->caution, Role::Caution}};
-    number.lowText = tr("act %1").arg(reasons.marginNumber(margin.id, margin.limit->act));
+    // The unit stands with the value and the caution limit; a third time there is no room for it.
+    const QString act = reasons.marginNumber(margin.id, margin.limit->act).section(QChar(0x00A0), 0, 0);
+    number.lowText = tr("act %1").arg(act);
     number.highText = tr("caution %1").arg(reasons.marginNumber(margin.id, margin.limit->caution));
     number.pressing = margin.judged < margin.limit->caution;
   } else {
@@ -238,7 +249,8 @@ void BenchPanel::refresh() {
   const QString used = tank->bed ? tr("used margin %1").arg(m_format.percent(*tank->bed)) : tr("used margin unknown");
   m_picture->setToolTip(used);
   m_picture->setAccessibleName(used);
-  m_condition->setCondition(tank->inService ? look.condition : std::nullopt, Words::conditionText(*tank), tank->stale);
+  m_condition->setCondition(tank->inService ? look.condition : std::nullopt, Words::conditionText(*tank),
+                            tank->inService && tank->stale);
   m_age->setText(sampled.isValid() ? tr("%1; read %2").arg(used, m_format.age(sampled, m_data.now())) : used);
   m_age->setToolTip(m_format.clockWithOffset(sampled));
   m_reason->setText(Reasons(m_format).headline(*tank, m_data.now()));

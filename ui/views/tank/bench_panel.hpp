@@ -42,7 +42,7 @@ class BenchPanel : public QWidget {
   void setTank(const std::string& tank);
   void refresh();
   /// Height at which nothing has to scroll.
-  [[nodiscard]] int contentHeight() const { return m_inside->sizeHint().height(); }
+  [[nodiscard]] int contentHeight() const;
 
  Q_SIGNALS:
   void acknowledgeWanted(qint64 alarm);

@@ -62,6 +62,7 @@ Strip History::channelStrip(const io::wire::ChannelView& channel, const TankHist
   Strip strip;
   strip.id = channel.id;
   strip.title = QString::fromStdString(channel.title.empty() ? channel.id : channel.title);
+  strip.shortTitle = Words::channelShort(channel.id, channel.title);
   strip.unit = unitText(channel.unit);
   if (channel.high > channel.low) {
     strip.low = channel.low;
@@ -110,6 +111,7 @@ StripSet History::strips(const io::wire::TankView& tank, const TankHistory& hist
   Strip activity;
   activity.id = "pM";
   activity.title = tr("pM of %1").arg(formulaText(tank.metal));
+  activity.shortTitle = QStringLiteral("pM");
   for (const io::wire::ResultView& result : history.results) {
     if (result.pM) activity.points.push_back({axisTime(result.sampledAt), *result.pM});
     set.results.push_back({axisTime(result.sampledAt), result.id, result.sampledAt});

@@ -31,6 +31,7 @@ struct StripLimit {
 struct Strip {
   std::string id;                    ///< "margin:ligand_loss", "pM", or a channel's id
   QString title, unit;
+  QString shortTitle;                ///< on its fold button
   std::vector<StripPoint> points;    ///< by time; a NaN value breaks the line
   std::vector<StripPoint> hollow;    ///< superseded readings
   std::vector<StripPoint> waiting;   ///< suspicious readings: nobody has decided yet

@@ -13,7 +13,7 @@ namespace tw::ui {
 namespace {
 
 constexpr int kBenchWidth = 452;
-constexpr int kBenchLeast = 410;
+constexpr int kBenchLeast = 440;
 constexpr int kNarrow = 940;
 constexpr int kSideHeight = 640;
 constexpr qint64 kFirstDays = 35;
@@ -79,7 +79,9 @@ TankView::TankView(const Look& look, const ShopData& shopData, ApiClient& client
   listenToClient();
 }
 
-void TankView::resizeEvent(QResizeEvent*) {
+void TankView::resizeEvent(QResizeEvent*) { fitPanes(); }
+
+void TankView::fitPanes() {
   // A small screen, or a large one at 200 %: the panes stand one above the other and scroll together.
   const bool narrow = width() < kNarrow;
   m_panes->setDirection(narrow ? QBoxLayout::TopToBottom : QBoxLayout::LeftToRight);
@@ -193,6 +195,7 @@ void TankView::setTank(const std::string& tank) {
   m_margin.clear();
   m_analysis->hide();
   m_bench->setTank(tank);
+  fitPanes();
   if (const io::wire::TankView* view = m_data.tank(tank)) fillMargins(*view);
   askSince(m_data.now().addDays(-kFirstDays));
 }
@@ -239,7 +242,7 @@ std::set<std::string> TankView::fillFolds(const StripSet& set) {
         redraw();
       });
     }
-    button->setText(strip.title);
+    button->setText(strip.shortTitle);
     button->setAccessibleName(tr("Strip %1").arg(strip.title));
     button->setChecked(!away);
     button->show();
@@ -259,6 +262,7 @@ void TankView::redraw() {
 
 void TankView::refreshAges() {
   m_bench->refresh();
+  fitPanes();
   if (m_drawn) m_soon.start();
 }
 

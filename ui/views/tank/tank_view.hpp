@@ -46,6 +46,7 @@ class TankView : public QWidget {
  private:
   enum Part : unsigned { kResults = 1, kReadings = 2, kEvents = 4, kAlarms = 8, kAll = 15 };
 
+  void fitPanes();
   QWidget* stripSide();
   QWidget* spanRow();
   void listenToClient();
