@@ -42,12 +42,10 @@ target_compile_options(tw_common INTERFACE
 target_compile_definitions(tw_common INTERFACE
   TW_VERSION="${PROJECT_VERSION}")
 
-# tw_pch(TARGET header...): a precompiled header where TW_PCH asks for one. Most of a unit's compile time is
-# its headers. The desk's builds leave it off, so that a missing include shows there.
-function(tw_pch target)
-  if(TW_PCH)
-    target_precompile_headers(${target} PRIVATE ${ARGN})
-  endif()
+# tw_alone(file...): these stay units of their own in a unity build, because they share a local name with a
+# neighbour.
+function(tw_alone)
+  set_source_files_properties(${ARGN} PROPERTIES SKIP_UNITY_BUILD_INCLUSION ON)
 endfunction()
 
 # tw_test(NAME lib... SOURCES file... [LABELS l...]): one GoogleTest binary that links only what it tests.
@@ -57,9 +55,6 @@ function(tw_test name)
   target_link_libraries(${name} PRIVATE tw_common ${ARG_LIBS} GTest::gtest GTest::gmock GTest::gtest_main)
   target_compile_definitions(${name} PRIVATE
     TW_SOURCE_DIR="${CMAKE_SOURCE_DIR}" TW_BINARY_DIR="${CMAKE_BINARY_DIR}")
-  if(TARGET tw_test_pch AND NOT ARG_LIBS MATCHES "tw_ui")
-    target_precompile_headers(${name} REUSE_FROM tw_test_pch)
-  endif()
   if(NOT ARG_TIMEOUT)
     set(ARG_TIMEOUT 300)
   endif()

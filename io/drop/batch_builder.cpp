@@ -270,7 +270,7 @@ void BatchBuilder::addLong(const RowHead& head, const ValueCell& cell, const Lon
   if (Incoming* slot = append()) *slot = std::move(reading);
 }
 
-void BatchBuilder::addEvent(const RowHead& head, const EventRow& row, Decimal decimal) {
+void BatchBuilder::addEvent(const RowHead& head, const EventText& row, Decimal decimal) {
   if (!beginRow(head)) return;
   IncomingEvent event;
   event.line = head.line;

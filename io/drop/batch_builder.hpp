@@ -37,7 +37,7 @@ struct LongExtras {
   std::string inputsText;
 };
 
-struct EventRow {
+struct EventText {
   std::string_view event, stock, amount, unit, lot, note;
 };
 
@@ -63,7 +63,7 @@ class BatchBuilder {
   void endRow();
   /// A whole long row; begins and ends it.
   void addLong(const RowHead& head, const ValueCell& cell, const LongExtras& extras, Decimal decimal);
-  void addEvent(const RowHead& head, const EventRow& row, Decimal decimal);
+  void addEvent(const RowHead& head, const EventText& row, Decimal decimal);
 
   [[nodiscard]] IncomingBatch finish();
 
