@@ -15,12 +15,18 @@
 namespace tw::ui {
 namespace {
 
+/// The application has to be there before the first member that uses the network.
+ThemeName appFirst(ThemeName name) {
+  test::needQt();
+  return name;
+}
+
 /// A window over data that are set by hand; nothing listens at its address.
 struct Desk {
   Desk()
-      : look(ThemeName::Light), format(QLocale(QLocale::English, QLocale::UnitedKingdom)),
+      
+      : look(appFirst(ThemeName::Light)), format(QLocale(QLocale::English, QLocale::UnitedKingdom)),
         data([] { return test::noon(); }), client(QUrl(QStringLiteral("http://127.0.0.1:9")), QByteArray()) {
-    test::needQt();
     auto away = test::copperTank("T3", "");
     away.inService = false;
     data.setTanks({test::copperTank("T1", "fine"), test::copperTank("T2", "brink"), away});

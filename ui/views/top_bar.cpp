@@ -65,10 +65,6 @@ void TopBar::setCurrentView(const QString& view) {
 }
 
 void TopBar::refresh() {
-  const QString title = QString::fromStdString(m_data.shop().title);
-  const QString shown = title.isEmpty() ? tr("Tankward") : title;
-  m_title->setText(QFontMetrics(m_title->font()).elidedText(shown, Qt::ElideRight, std::max(m_title->width(), 40)));
-  m_title->setToolTip(title);
   switch (m_data.link()) {
     case Link::Connecting: m_link->setText(tr("connecting\u2026")); break;
     case Link::Live: m_link->setText(tr("connected, live")); break;
@@ -80,13 +76,17 @@ void TopBar::refresh() {
   const bool light = m_look.theme().name() == ThemeName::Light;
   m_theme->setText(light ? tr("Dark") : tr("Light"));
   m_theme->setAccessibleName(light ? tr("Switch to the dark theme") : tr("Switch to the light theme"));
+  layout()->activate();  // the title takes the room that the texts above leave
+  const QString title = QString::fromStdString(m_data.shop().title);
+  const QString shown = title.isEmpty() ? tr("Tankward") : title;
+  m_title->setText(QFontMetrics(m_title->font()).elidedText(shown, Qt::ElideRight, std::max(m_title->width(), 40)));
+  m_title->setToolTip(title);
 }
 
 void TopBar::resizeEvent(QResizeEvent*) {
   const bool narrow = width() < kNarrow;
   m_who->setVisible(!narrow);
   m_link->setVisible(!narrow || m_data.link() != Link::Live);
-  layout()->activate();
   refresh();
 }
 

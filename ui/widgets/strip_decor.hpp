@@ -8,7 +8,8 @@
 #include <optional>
 
 #include "ui/theme/look.hpp"
-#include "ui/views/tank/history.hpp"
+#include "ui/widgets/strip_set.hpp"
+#include "ui/words/format.hpp"
 
 namespace tw::ui {
 

@@ -9,7 +9,8 @@
 #include <set>
 
 #include "ui/theme/look.hpp"
-#include "ui/views/tank/history.hpp"
+#include "ui/widgets/strip_set.hpp"
+#include "ui/words/format.hpp"
 
 namespace tw::ui {
 

@@ -7,6 +7,7 @@
 #include <algorithm>
 
 #include "ui/theme/style.hpp"
+#include "ui/views/tank/history.hpp"
 #include "ui/words/words.hpp"
 
 namespace tw::ui {
