@@ -24,7 +24,6 @@ ThemeName appFirst(ThemeName name) {
 /// A window over data that are set by hand; nothing listens at its address.
 struct Desk {
   Desk()
-      
       : look(appFirst(ThemeName::Light)), format(QLocale(QLocale::English, QLocale::UnitedKingdom)),
         data([] { return test::noon(); }), client(QUrl(QStringLiteral("http://127.0.0.1:9")), QByteArray()) {
     auto away = test::copperTank("T3", "");
