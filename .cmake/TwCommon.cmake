@@ -39,6 +39,10 @@ target_compile_options(tw_common INTERFACE
   # g++ 12 reports false positives here from inside libstdc++ once it inlines std::string and
   # std::variant (seen with 12.2 at -O1 and above).
   $<$<CXX_COMPILER_ID:GNU>:-Wno-maybe-uninitialized;-Wno-restrict;-Wno-array-bounds;-Wno-stringop-overflow>)
+if(CMAKE_UNITY_BUILD)
+  # In a unity build g++ takes each file for a header and warns of test fixtures in unnamed namespaces.
+  target_compile_options(tw_common INTERFACE -Wno-subobject-linkage)
+endif()
 target_compile_definitions(tw_common INTERFACE
   TW_VERSION="${PROJECT_VERSION}")
 
