@@ -91,7 +91,7 @@ settle_ms = 300
 
 # A pH meter on Copper 1. Uncomment where there is one.
 #[[serial]]
-#port = "serial-service"
+#port = "/dev/ttyUSB0"
 #baud = 9600
 #tank = "L2-T1"
 #frame = "named"

@@ -11,6 +11,8 @@
 #include <vector>
 
 #include "model/analysis.hpp"
+#include "model/closed_liquor.hpp"
+#include "model/equilibrium.hpp"
 #include "tests/support/bath_builder.hpp"
 
 namespace tw::test {
@@ -19,7 +21,7 @@ namespace {
 using namespace model;
 
 constexpr int kRounds = 301;
-constexpr int kSweepPoints = 201;  // neighbours close enough that each starts from the last
+constexpr double kNeighbour_pH = 0.01;  // how far a warm start is from its neighbour: a step of a margin search
 
 BathBuilder bathOf25(ActivityModel activityModel) {
   BathBuilder bath(activityModel);
@@ -68,23 +70,51 @@ double exponentials_us(std::size_t count) {
   }) / kRepeat;
 }
 
+struct Bare {
+  double us = 0.0;
+  double iterations = 0.0;
+};
+
+/// The solver alone, laid out once: from nothing each time, or back and forth between two neighbours.
+Bare bareSolve(BathBuilder& bath, bool warmStart) {
+  const Layout layout = *layOut(bath.system());
+  Constants constants;
+  constantsAt(bath.system(), layout, bath.input().temperature_C, constants);
+  Problem problem = *statedProblem(bath.system(), layout, bath.input());
+  Equilibrium equilibrium(layout);
+  Estimate estimate;
+  equilibrium.solve(constants, problem, estimate);
+  double& lnProton = problem.rows[bath.system().proton].value;
+  const double here = lnProton;
+  long iterations = 0, solves = 0;
+  Bare bare;
+  bare.us = median_us([&] {
+    lnProton = lnProton == here ? here - kNeighbour_pH * std::log(10.0) : here;
+    if (!warmStart) estimate = Estimate{};
+    iterations += equilibrium.solve(constants, problem, estimate).iterations;
+    ++solves;
+  });
+  bare.iterations = static_cast<double>(iterations) / static_cast<double>(solves);
+  return bare;
+}
+
 void report(const char* name, ActivityModel activityModel) {
   BathBuilder bath = bathOf25(activityModel);
-  const LiquorReport once = bath.solve(40.0);
-  const std::size_t species = once.species.size();
-  const double cold = median_us([&] { benchmark::DoNotOptimize(analyse(bath.system(), bath.input(), {.margins = false})); });
-  SweepRequest request;
-  request.over = SweepOver::Ph;
-  request.from = 9.4;
-  request.to = 9.8;
-  request.points = kSweepPoints;
-  const double warm = median_us([&] { benchmark::DoNotOptimize(sweep(bath.system(), bath.input(), request)); }) / kSweepPoints;
-  const double all = median_us([&] { benchmark::DoNotOptimize(analyse(bath.system(), bath.input())); });
-  const double one = exponentials_us(species);
-  const double needed = one * std::max(1, once.solver.iterations);
-  std::printf("%-12s %zu species, %d iterations: cold %.2f us, warm %.2f us, exponentials %.3f us a pass, "
-              "%.2f us in all; cold/exponentials %.1f, warm/pass %.1f; with margins %.0f us\n",
-              name, species, once.solver.iterations, cold, warm, one, needed, cold / needed, warm / one, all);
+  const std::size_t species = bath.solve(40.0).species.size();
+  const double pass = exponentials_us(species);
+  const Bare cold = bareSolve(bath, false);
+  const Bare warm = bareSolve(bath, true);
+  const double whole = median_us([&] { benchmark::DoNotOptimize(analyse(bath.system(), bath.input(), {.margins = false})); });
+  const double margins = median_us([&] { benchmark::DoNotOptimize(analyse(bath.system(), bath.input())); });
+  std::printf("%-12s %zu species, one pass of exponentials %.3f us\n", name, species, pass);
+  const auto line = [&](const char* what, const Bare& bare) {
+    const double needed = pass * bare.iterations;
+    std::printf("  %-22s %6.2f us in %4.1f iterations = %.1f x the exponentials it needs (%.2f us)\n", what, bare.us,
+                bare.iterations, bare.us / needed, needed);
+  };
+  line("cold solve", cold);
+  line("warm solve", warm);
+  std::printf("  analyse %.1f us, with every margin %.0f us = %.0f warm solves\n", whole, margins, margins / warm.us);
 }
 
 void coldSolve(benchmark::State& state) {
