@@ -22,6 +22,11 @@ ServiceDouble::ServiceDouble() {
   m_port = m_server.serverPort();
 }
 
+ServiceDouble::~ServiceDouble() {
+  // The sockets are the server's children and would speak to members that are gone already.
+  for (QTcpSocket* socket : m_sockets) socket->disconnect(this);
+}
+
 void ServiceDouble::put(const QByteArray& path, const std::string& body, int status) {
   m_answers[path] = {status, QByteArray::fromStdString(body)};
 }

@@ -22,6 +22,7 @@ class ServiceDouble : public QObject {
   };
 
   ServiceDouble();
+  ~ServiceDouble() override;
   /// Answers `path` (with /api/v1, without query) with `body`.
   void put(const QByteArray& path, const std::string& body, int status = 200);
   /// All of a small shop: see samples.hpp.
