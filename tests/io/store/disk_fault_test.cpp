@@ -88,8 +88,7 @@ TEST(DiskFault, AGroupThatMeetsAFullStoreIsFaultedWhole) {
   TempFolder folder;
   std::vector<bool> outcomes;
   {
-    Writer writer(crampedStore(folder.path()));
-    std::promise<void> gate;
+    std::promise<void> gate;  // it and the jobs outlive the writer, whose thread uses them
     const auto note = [&](model::Result<model::Done> outcome) { outcomes.push_back(outcome.has_value()); };
     const auto fill = [](int from, int count) {
       return [=](Store& store) -> model::Result<model::Done> {
@@ -100,6 +99,7 @@ TEST(DiskFault, AGroupThatMeetsAFullStoreIsFaultedWhole) {
         return model::Done{};
       };
     };
+    Writer writer(crampedStore(folder.path()));
     ASSERT_TRUE(writer.submit([&](Store& store) { gate.get_future().wait(); return fill(0, 1)(store); }, note));
     ASSERT_TRUE(writer.submit(fill(1, 100000), note));
     ASSERT_TRUE(writer.submit(fill(200000, 1), note));

@@ -54,8 +54,8 @@ TEST_F(WriterTest, UndoesAFaultyJobAlone) {
   std::vector<std::string> outcomes;
   std::promise<void> gate;  // outlives the writer, whose thread waits for it
   {
-    Writer writer(open());
     const auto note = [&](Outcome outcome) { outcomes.push_back(outcome ? "done" : outcome.error().code); };
+    Writer writer(open());
     // Holds the group open until all are queued, so that they share a commit.
     ASSERT_TRUE(writer.submit([&](Store& store) { gate.get_future().wait(); return addAt(0)(store); }, note));
     ASSERT_TRUE(writer.submit(
