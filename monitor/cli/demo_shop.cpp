@@ -54,13 +54,13 @@ std::vector<TankStory> demoTanks() {
   tanks.push_back(tank("L1-T1", "Nickel 1", "L1", "nickel-citrate-ammonia", kGreen, 600, nickelCitrate(0.010)));
   tanks.push_back(tank("L1-T2", "Nickel 2", "L1", "nickel-citrate-ammonia", kGreen, 600, nickelCitrate(0.012)));
   tanks.back().neglectedForDays = 6.0;
-  tanks.back().neglectFactor = 1.7;
+  tanks.back().neglectFactor = 2.3;
   tanks.push_back(
       tank("L1-T3", "Electroless copper 1", "L1", "electroless-copper-edta", kPaleBlue, 400, electrolessCopper()));
   tanks.push_back(tank("L2-T1", "Copper 1", "L2", "copper-ammine", kDeepBlue, 900, copperAmmine(0.030)));
   tanks.push_back(tank("L2-T2", "Copper 2", "L2", "copper-ammine", kDeepBlue, 900, copperAmmine(0.028)));
   tanks.back().neglectedForDays = 7.0;
-  tanks.back().neglectFactor = 3.9;
+  tanks.back().neglectFactor = 4.4;
   tanks.push_back(tank("L2-T3", "Copper 3", "L2", "copper-ammine", kDeepBlue, 900, copperAmmine(0.030)));
   tanks.back().silentForHours = 60.0;
   tanks.push_back(tank("L2-T4", "Copper 4", "L2", "copper-ammine", kDeepBlue, 1200, copperAmmine(0.030)));

@@ -30,8 +30,8 @@ class WriterTest : public testing::Test {
 
 TEST_F(WriterTest, TellsOfAJobOnlyWhenOthersCanReadIt) {
   auto reader = (open(), open(StoreMode::ReadOnly));
-  Writer writer(open());
   std::promise<std::size_t> seen;
+  Writer writer(open());
   ASSERT_TRUE(writer.submit(addAt(0), [&](Outcome outcome) {
     seen.set_value(outcome ? must(reader->readings("T1", Instant::min())).size() : 0);
   }));
